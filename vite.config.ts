@@ -1,0 +1,11 @@
+import react from '@vitejs/plugin-react'
+import { defineConfig } from 'vitest/config'
+
+export default defineConfig({
+  plugins: [react()],
+  // The app works from any folder of any server.
+  base: './',
+  build: { target: 'es2022', outDir: 'dist' },
+  worker: { format: 'es' },
+  test: { include: ['test/**/*.test.ts', 'test/**/*.test.tsx'], exclude: ['test/browser/**'] },
+})
