@@ -15,7 +15,7 @@ export interface InstructionSet {
 export const INSTRUCTION_SETS = {
   full: { name: 'full', on: new Set<SwitchedClass>(['logic', 'shift', 'multiply']) },
   'no-multiply': { name: 'no-multiply', on: new Set<SwitchedClass>(['logic', 'shift']) },
-  'add-only': { name: 'add-only', on: new Set<SwitchedClass>(['multiply']) },
+  'add-only': { name: 'add-only', on: new Set<SwitchedClass>() },
   extended: { name: 'extended', on: new Set<SwitchedClass>(SWITCHED_CLASSES) },
 } as const satisfies Record<string, InstructionSet>
 export type InstructionSetName = keyof typeof INSTRUCTION_SETS
