@@ -7,5 +7,10 @@ export default defineConfig({
   base: './',
   build: { target: 'es2022', outDir: 'dist' },
   worker: { format: 'es' },
-  test: { include: ['test/**/*.test.ts', 'test/**/*.test.tsx'], exclude: ['test/browser/**'] },
+  test: {
+    include: ['test/**/*.test.ts', 'test/**/*.test.tsx'],
+    exclude: ['test/browser/**'],
+    // Some tests run whole commands; a busy machine must not fail them.
+    testTimeout: 60_000,
+  },
 })
