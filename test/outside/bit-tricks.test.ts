@@ -20,21 +20,28 @@ function inputsOf({ width, inputs, below }: BitTrick): bigint[][] {
   })
   const combined = inputs.reduce<bigint[][]>((rows, _) => rows.flatMap(row => corners.map(c => [...row, c])), [[]])
   const everyByte = limit === 256n && inputs.length === 1
-  return [...combined.slice(0, 250), ...random, ...(everyByte ? Array.from({ length: 256 }, (_, b) => [BigInt(b)]) : [])]
+  return [
+    ...combined.slice(0, 250),
+    ...random,
+    ...(everyByte ? Array.from({ length: 256 }, (_, b) => [BigInt(b)]) : []),
+  ]
 }
 
 // Source: S. E. Anderson, "Bit Twiddling Hacks", section by section as in the table.
 describe('operation counts of a bit-trick collection', () => {
-  test.each(BIT_TRICKS.map(trick => [trick.section, trick.published, trick] as const))('%s: %i', (_, published, trick) => {
-    const routine = routineOf(trick)
-    for (const words of inputsOf(trick)) {
-      if (trick.section.includes('log base 2') && words[0] === 0n) continue
-      const scalars = Object.fromEntries(trick.inputs.map((name, i) => [name, words[i]!]))
-      const outcome = routine.run({ width: trick.width, scalars })
-      expect(outcome.scalars.r, words.join(', ')).toBe(trick.expected(...words))
-      expect(outcome.time(CHARGES.operators)).toBe(published + (trick.differs?.by ?? 0))
-    }
-  })
+  test.each(BIT_TRICKS.map(trick => [trick.section, trick.published, trick] as const))(
+    '%s: %i',
+    (_, published, trick) => {
+      const routine = routineOf(trick)
+      for (const words of inputsOf(trick)) {
+        if (trick.section.includes('log base 2') && words[0] === 0n) continue
+        const scalars = Object.fromEntries(trick.inputs.map((name, i) => [name, words[i]!]))
+        const outcome = routine.run({ width: trick.width, scalars })
+        expect(outcome.scalars.r, words.join(', ')).toBe(trick.expected(...words))
+        expect(outcome.time(CHARGES.operators)).toBe(published + (trick.differs?.by ?? 0))
+      }
+    },
+  )
 
   test("Brian Kernighan's count goes through as many passes as there are bits set", () => {
     const kernighan = new TwoWays(`

@@ -175,7 +175,8 @@ export const BIT_TRICKS: readonly BitTrick[] = [
   x <- x | (x >> 8)
   x <- x | (x >> 16)
   r <- x + 1`,
-    expected: v => (v === 0n ? 0n : BigInt.asUintN(32, 1n << BigInt((v - 1n).toString(2).length - (v === 1n ? 1 : 0)))),
+    expected: v =>
+      v === 0n ? 0n : BigInt.asUintN(32, 1n << BigInt((v - 1n).toString(2).length - (v === 1n ? 1 : 0))),
     published: 12,
   },
   {
@@ -264,7 +265,8 @@ export const BIT_TRICKS: readonly BitTrick[] = [
     published: 25,
     differs: {
       by: -2,
-      because: 'the last step is printed without its two masks, which the heading counts: half a word has no neighbours',
+      because:
+        'the last step is printed without its two masks, which the heading counts: half a word has no neighbours',
     },
   },
   {
@@ -308,7 +310,8 @@ export const BIT_TRICKS: readonly BitTrick[] = [
     section: 'Determine if a word has a byte less than n: countless, here for 77',
     width: 32,
     inputs: ['v'],
-    constants: 'fix reach = (127 + 77) * (2^32 - 1) / 255\n  fix low = 127 * (2^32 - 1) / 255\n  fix high = 128 * (2^32 - 1) / 255',
+    constants:
+      'fix reach = (127 + 77) * (2^32 - 1) / 255\n  fix low = 127 * (2^32 - 1) / 255\n  fix high = 128 * (2^32 - 1) / 255',
     body: `
   r <- (((reach - (v & low)) & ~v & high) / 128) mod 255`,
     expected: v => BigInt(bytes(v, 32).filter(byte => byte < 77n).length),
@@ -327,7 +330,8 @@ export const BIT_TRICKS: readonly BitTrick[] = [
     section: 'Determine if a word has a byte greater than n: countmore, here for 77',
     width: 32,
     inputs: ['v'],
-    constants: 'fix rest = (127 - 77) * (2^32 - 1) / 255\n  fix low = 127 * (2^32 - 1) / 255\n  fix high = 128 * (2^32 - 1) / 255',
+    constants:
+      'fix rest = (127 - 77) * (2^32 - 1) / 255\n  fix low = 127 * (2^32 - 1) / 255\n  fix high = 128 * (2^32 - 1) / 255',
     body: `
   r <- (((((v & low) + rest) | v) & high) / 128) mod 255`,
     expected: v => BigInt(bytes(v, 32).filter(byte => byte > 77n).length),
@@ -401,7 +405,8 @@ export const BIT_TRICKS: readonly BitTrick[] = [
     published: 1,
     differs: {
       by: 1,
-      because: 'the C shift keeps the sign; ours, as on the word-RAM, brings in zeros, so the bit is negated afterwards',
+      because:
+        'the C shift keeps the sign; ours, as on the word-RAM, brings in zeros, so the bit is negated afterwards',
     },
   },
   {
@@ -414,7 +419,10 @@ export const BIT_TRICKS: readonly BitTrick[] = [
   r <- (v + mask) xor mask`,
     expected: v => BigInt.asUintN(32, BigInt.asIntN(32, v) < 0n ? -v : v),
     published: 3,
-    differs: { by: 1, because: 'the C shift keeps the sign; ours brings in zeros, so the bit is negated afterwards' },
+    differs: {
+      by: 1,
+      because: 'the C shift keeps the sign; ours brings in zeros, so the bit is negated afterwards',
+    },
   },
   {
     // "Two more instructions" than (x < y) ? x : y, which has three operands and two operators, `<` and `?:`.
@@ -444,7 +452,8 @@ export const BIT_TRICKS: readonly BitTrick[] = [
     published: 3,
     differs: {
       by: -1,
-      because: 'no figure is given beside it; of its three C operators one is a comparison, which `operators` price 0',
+      because:
+        'no figure is given beside it; of its three C operators one is a comparison, which `operators` price 0',
     },
   },
 ]

@@ -3,8 +3,8 @@ import { fileURLToPath } from 'node:url'
 import { expect } from 'vitest'
 import { type CompiledProgram, compileProgramSync } from '../../src/engine'
 import {
-  bindProgram,
   type Binding,
+  bindProgram,
   CHARGES,
   type Charges,
   DEFAULT_LIMITS,
@@ -120,7 +120,8 @@ export class TwoWays {
   }
 }
 
-function toInput(given: Given): Input {
+/** The words of a run in the form that both ways take. */
+export function toInput(given: Given): Input {
   const mask = (1n << BigInt(given.width)) - 1n
   const word = (value: bigint | number) => BigInt(value) & mask
   const scalars = Object.entries(given.scalars ?? {}).map(([name, value]) => [name, word(value)] as const)

@@ -1,0 +1,171 @@
+import fc from 'fast-check'
+import type { Given } from '../outside/two-ways'
+import { type Arrays, drawWord, randomArrays, type Scope, statements } from './random-text'
+
+/** A whole random routine and all that one run of it needs. Valid by construction; it may fail when run. */
+export interface RandomRoutine {
+  readonly text: string
+  readonly given: Given & { readonly width: number }
+}
+
+/** Small and odd widths often: that is where masks, limits and addresses bite. */
+const width: fc.Arbitrary<number> = fc.oneof(
+  { weight: 4, arbitrary: fc.integer({ min: 2, max: 8 }) },
+  { weight: 3, arbitrary: fc.constantFrom(13, 31, 33, 47, 63) },
+  { weight: 3, arbitrary: fc.constantFrom(32, 64) },
+  { weight: 2, arbitrary: fc.integer({ min: 2, max: 64 }) },
+)
+
+/** Small limits, so that every run ends soon; those that hit one must do so at the same place both ways. */
+const limits = fc.record({
+  operations: fc.constantFrom(1500, 400, 60, 8),
+  frames: fc.constantFrom(400, 60, 12),
+})
+
+interface ProcedureShape {
+  readonly parameters: number
+  readonly results: number
+  readonly bodySeed: (scope: Scope) => string[]
+  /** Where it recurs with its depth as it stands, it may never come back. */
+  readonly bounded: boolean
+}
+
+const procedure: fc.Arbitrary<ProcedureShape> = fc.record({
+  parameters: fc.nat(2),
+  results: fc.nat(2),
+  bodySeed: statements,
+  bounded: fc.nat(9).map(draw => draw < 8),
+})
+
+const shape = fc.record({
+  width,
+  limits,
+  n: fc.nat(6),
+  arrays: randomArrays,
+  inputs: fc.nat(2),
+  kept: fc.boolean(),
+  outputs: fc.integer({ min: 1, max: 2 }),
+  words: fc.array(drawWord, { minLength: 40, maxLength: 40 }),
+  tunable: fc.nat(5),
+  procedures: fc.array(procedure, { maxLength: 2 }),
+  body: statements,
+  junk: fc.nat(1000),
+})
+
+/** Arbitrary of whole random routines with width, input and limits. Shrinks towards short texts and small words. */
+export const randomRoutine: fc.Arbitrary<RandomRoutine> = shape.map(drawn => {
+  const modulus = 1n << BigInt(drawn.width)
+  const word = (at: number) => drawn.words[at % drawn.words.length]!(modulus)
+  const small = (value: number) => Number(BigInt(value) % modulus)
+  const n = small(drawn.n)
+  const arrays = fitArrays(drawn.arrays, n, Number(modulus < 64n ? modulus : 64n))
+  const inputs = ['s', 't'].slice(0, drawn.inputs)
+  const kept = drawn.kept ? ['u'] : []
+  const outputs = ['p', 'q'].slice(0, drawn.outputs)
+  const locals = ['x', 'y', 'z']
+  const procedures = drawn.procedures.map((shape, at) => ({ ...shape, name: `f${at}` }))
+
+  const scope = (place: Partial<Scope>): Scope => ({
+    modulus,
+    arrays,
+    readable: [],
+    assignable: [],
+    labels: [],
+    procedures,
+    depth: undefined,
+    inside: 0,
+    loopNames: [],
+    fresh: counter(),
+    ...place,
+  })
+  const loops = ['i', 'j', 'k']
+  const constants = ['c', 'm', 'w', ...(arrays.some(array => array.sized) ? ['n'] : [])]
+
+  const procedureText = ({ name, parameters, results, bodySeed, bounded }: (typeof procedures)[number]) => {
+    const taken = ['a0', 'a1'].slice(0, parameters)
+    const given = ['r0', 'r1'].slice(0, results)
+    const own = [...given, 'x', 'y']
+    const start = [...own, 'fuel', ...loops].map(
+      (variable, at) => `  ${variable} <- ${variable === 'fuel' ? '~0' : at % 2}`,
+    )
+    const body = bodySeed(
+      scope({
+        readable: [...own, ...taken, 'depth', ...constants],
+        assignable: [...own, ...taken],
+        depth: bounded ? 'depth - 1' : 'depth',
+        loopNames: loops,
+      }),
+    )
+    return [
+      `procedure ${name}(${['depth', ...taken].join(', ')})${given.length > 0 ? ` -> ${given.join(', ')}` : ''}`,
+      ...start.map(line => line.replace('~0', String(modulus - 1n))),
+      '  if depth = 0',
+      '    return',
+      '  end',
+      ...body.map(line => `  ${line}`),
+      'end',
+    ]
+  }
+
+  const variables = [...kept, ...outputs, ...locals]
+  const initial = [...outputs, ...locals].map((variable, at) => `  ${variable} <- ${word(at)}`)
+  const body = drawn.body(
+    scope({ readable: [...variables, ...inputs, ...constants], assignable: variables, loopNames: loops }),
+  )
+  const text = [
+    'routine random',
+    ...(inputs.length > 0 ? [`  in ${inputs.join(', ')}`] : []),
+    ...(kept.length > 0 ? [`  inout ${kept.join(', ')}`] : []),
+    `  out ${outputs.join(', ')}`,
+    ...arrays.map(({ role, name, length, declared }) =>
+      role === 'fix'
+        ? `  fix ${name}[${length}] = ${Array.from({ length }, (_, at) => word(at + 7)).join(', ')}`
+        : `  ${role} ${name}[${declared}]`,
+    ),
+    `  let m = ${small(drawn.tunable)}`,
+    `  fix c = ${word(3)}`,
+    ...procedures.flatMap(procedureText),
+    'begin',
+    ...initial,
+    `  fuel <- ${modulus - 1n}`,
+    ...loops.map((variable, at) => `  ${variable} <- ${at % 2}`),
+    ...body.map(line => `  ${line}`),
+    'end',
+    '',
+  ].join('\n')
+
+  const filled = arrays.filter(({ role }) => role === 'in' || role === 'inout')
+  const given = {
+    width: drawn.width,
+    sizes: arrays.some(array => array.sized) ? { n } : {},
+    scalars: Object.fromEntries([...inputs, ...kept].map((name, at) => [name, word(at + 20)])),
+    arrays: Object.fromEntries(
+      filled.map(({ name, length }, which) => [name, Array.from({ length }, (_, at) => word(at * 3 + which * 5))]),
+    ),
+    junk: drawn.junk,
+    limits: drawn.limits,
+  }
+  // A shrunk counterexample is to be read, and pasted into a test.
+  return { text, given, [fc.toStringMethod]: () => `\n${text}\nrun with ${fc.stringify(given)}\n` }
+})
+
+function counter(): () => number {
+  let count = 0
+  return () => count++
+}
+
+/** Leaves arrays out so that memory has no more words than addresses, or than a test needs. */
+function fitArrays(drawn: Arrays, n: number, capacity: number): Arrays {
+  let left = capacity
+  let known = false
+  return drawn.flatMap(array => {
+    // Only input and output arrays make n a size.
+    const sized = array.sized && (array.role !== 'work' || known)
+    const length = sized ? n + array.extra : array.extra
+    if (length > left || (length === 0 && !sized)) return []
+    left -= length
+    known ||= sized
+    const declared = !sized ? String(array.extra) : array.extra > 0 ? `n + ${array.extra}` : 'n'
+    return [{ ...array, sized, length, declared }]
+  })
+}
