@@ -83,7 +83,7 @@ function browserTests(): Outcome {
 }
 
 const steps: readonly (readonly [string, () => Outcome])[] = [
-  ['format and lint', () => check('biome', 'check', '.')],
+  ['format and lint', () => check('biome', 'check', '--error-on-warnings', '.')],
   ['types', () => check('tsc', '--noEmit')],
   ['unit tests and outside checks', () => tests('unit', [])],
   ['build', () => check('vite', 'build')],

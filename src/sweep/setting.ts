@@ -1,5 +1,8 @@
 import type { Exact } from '../../grammar/tree'
+import type { FeedPattern } from '../feed/pattern'
 import type { Charges, InstructionSetName, OffPolicy } from '../machine/machine'
+
+export { FEED_PATTERNS, type FeedPattern } from '../feed/pattern'
 
 /** Sizes that a grid visits, as the user wrote them and as they came out; sorted, without repeats. */
 export interface SizeRange {
@@ -12,9 +15,6 @@ export interface SizeRange {
 export type WidthChoice =
   | { readonly kind: 'fixed'; readonly width: number }
   | { readonly kind: 'tied'; readonly text: string; readonly expression: Exact }
-
-export const FEED_PATTERNS = ['uniform', 'sorted', 'reversed', 'equal', 'permutation'] as const
-export type FeedPattern = (typeof FEED_PATTERNS)[number]
 
 /** Everything that fixes a result besides the routine. A plain value: it survives JSON and workers (BigInts aside). */
 export interface Setting {
