@@ -2,10 +2,12 @@
 export interface Terminal {
   /** The folder that relative paths start from. */
   readonly folder: string
-  readonly out: (text: string) => void
+  /** Writes a line to standard output. */
+  readonly print: (text: string) => void
+  /** Writes a line to standard error. */
   readonly complain: (text: string) => void
-  /** Rewrites the line that shows progress; undefined where nobody watches. */
-  readonly progress?: (text: string) => void
+  /** Rewrites the line that shows progress, or takes it away; undefined where nobody watches. */
+  readonly progress?: (text: string | undefined) => void
   readonly readInput: () => Promise<string>
 }
 
@@ -21,7 +23,7 @@ export const EXIT = {
 } as const
 export type Exit = (typeof EXIT)[keyof typeof EXIT]
 
-/** Ends a command early, after its message has gone to standard error. Caught in one place, `runCommand`. */
+/** Ends a command early with a message for standard error. Thrown by the verbs, caught in one place: `runCommand`. */
 export class Leave extends Error {
   constructor(
     readonly exit: Exit,

@@ -2,7 +2,10 @@
 export function nearestName(word: string, known: readonly string[]): string | undefined {
   const near = known
     .map(name => ({ name, distance: editDistance(word.toLowerCase(), name.toLowerCase()) }))
-    .filter(({ name, distance }) => distance <= Math.max(1, Math.floor(Math.max(name.length, word.length) / 3)))
+    .filter(({ name, distance }) => {
+      const length = Math.max(name.length, word.length)
+      return distance < length && distance <= Math.max(1, Math.floor(length / 3))
+    })
   return near.sort((a, b) => a.distance - b.distance)[0]?.name
 }
 

@@ -1,5 +1,6 @@
 import type { InstructionSetName } from '../machine/machine'
 import type { Tally } from '../machine/tally'
+import type { Setting } from './setting'
 
 /** One place of the grid. */
 export interface GridPoint {
@@ -54,3 +55,14 @@ export type PointResult =
       readonly line?: number
       readonly seed: number
     }
+
+/** All results of one setting, in the grid's order. A plain value. */
+export interface SweepResult {
+  readonly setting: Setting
+  /** The routine's name, and the text it was read from. */
+  readonly routine: string
+  readonly text: string
+  readonly points: readonly PointResult[]
+  /** False where the sweep was stopped before its last point. */
+  readonly complete: boolean
+}

@@ -1,0 +1,5 @@
+export { type Data, readData, readInput, sizesOfData } from './data'
+export { feedInput } from './feed'
+export { GENERATOR } from './generator'
+export { FEED_PATTERNS, type FeedPattern } from './pattern'
+export { type Coordinates, trialSeed } from './seed'
