@@ -12,8 +12,17 @@ export type ExactOperator = '+' | '-' | '*' | '/' | '^' | 'mod'
 export type ExactFunction = 'lg' | 'ceil' | 'floor' | 'min' | 'max' | 'abs' | 'popcount'
 
 export type Exact =
-  /** A literal; `denominator` is 1 unless written with a decimal point (0.5 is 1/2, in lowest terms). */
-  | { readonly kind: 'number'; readonly numerator: bigint; readonly denominator: bigint; readonly span: Span }
+  /**
+   * A literal; `denominator` is 1 unless written with a decimal point (0.5 is 1/2, in lowest terms). `written` is
+   * the literal as it stands where that is not its plain decimal form (`0xff`, `0b101`, `1_000`).
+   */
+  | {
+      readonly kind: 'number'
+      readonly numerator: bigint
+      readonly denominator: bigint
+      readonly written?: string
+      readonly span: Span
+    }
   /** A size, let, fix, scalar, bound index or `w`; in an assert also a variable. */
   | { readonly kind: 'name'; readonly name: Name; readonly span: Span }
   | {
@@ -143,7 +152,8 @@ export type WordOperator = '+' | '-' | '*' | '/' | 'mod' | '&' | '|' | 'xor' | '
 export type WordFunction = 'popcount' | 'msb' | 'lsb'
 
 export type WordExpression =
-  | { readonly kind: 'number'; readonly value: bigint; readonly span: Span }
+  /** `written` is the literal as it stands where that is not its plain decimal form (`0xff`, `0b101`, `1_000`). */
+  | { readonly kind: 'number'; readonly value: bigint; readonly written?: string; readonly span: Span }
   /** A variable, scalar, size, let, fix or `w`. */
   | { readonly kind: 'name'; readonly name: Name; readonly span: Span }
   | {

@@ -1,0 +1,537 @@
+import { EmbeddedActionsParser, type IParserErrorMessageProvider, type ParserMethod, tokenLabel } from 'chevrotain'
+import { type Mark, markSpan } from './lines'
+import { arrangeParts, type Part, type Phrase } from './phrase'
+import { joinSpans, type Span } from './span'
+import * as T from './tokens'
+
+/** A name with, for an array, what stands in its brackets. */
+export interface ItemForm {
+  readonly name: Mark
+  readonly length?: Phrase
+  readonly span: Span
+}
+
+/** One line as the parser finds it: its words in their places, expressions unread. */
+export type LineForm =
+  | { readonly kind: 'routine'; readonly name: Mark }
+  | { readonly kind: 'items'; readonly word: Mark; readonly items: readonly ItemForm[] }
+  | { readonly kind: 'let'; readonly name: Mark; readonly equal: Mark; readonly value: Phrase }
+  | {
+      readonly kind: 'fix'
+      readonly name: Mark
+      readonly length?: Phrase
+      readonly range?: RangeForm
+      readonly equal: Mark
+      readonly values: readonly Phrase[]
+    }
+  | { readonly kind: 'need' | 'check'; readonly condition: Phrase }
+  | {
+      readonly kind: 'feed'
+      readonly name: Mark
+      readonly index?: Mark
+      readonly from: Phrase
+      readonly to: Phrase
+    }
+  | { readonly kind: 'distinct'; readonly name: Mark }
+  | { readonly kind: 'claim'; readonly measure: Mark; readonly operator: Mark; readonly bound: Phrase }
+  | {
+      readonly kind: 'procedure'
+      readonly name: Mark
+      readonly parameters: readonly Mark[]
+      readonly results: readonly Mark[]
+    }
+  | { readonly kind: 'if'; readonly condition: Phrase; readonly label?: Mark }
+  | { readonly kind: 'else'; readonly condition?: Phrase }
+  | { readonly kind: 'while' | 'until'; readonly condition: Phrase }
+  | {
+      readonly kind: 'for'
+      readonly variable: Mark
+      /** `from`, or what stands in its place. */
+      readonly opening: Mark
+      readonly from: Phrase
+      /** `to`, `downto`, or what stands in its place. */
+      readonly direction: Mark
+      readonly to: Phrase
+      readonly step?: Phrase
+    }
+  | { readonly kind: 'begin' | 'end' | 'repeat' | 'halt' }
+  | { readonly kind: 'goto'; readonly label: Mark }
+  | { readonly kind: 'return'; readonly values: readonly Phrase[] }
+  | { readonly kind: 'assert'; readonly condition: Phrase }
+  /** `arrow` is absent where a place stands alone. */
+  | {
+      readonly kind: 'assign'
+      readonly places: readonly Phrase[]
+      readonly arrow?: Mark
+      readonly values: readonly Phrase[]
+    }
+
+export interface RangeForm {
+  readonly index: Mark
+  readonly from: Phrase
+  readonly to: Phrase
+}
+
+/** Messages say what was expected, in plain words; what was found is the line reader's to say. */
+const expectations: IParserErrorMessageProvider = {
+  buildMismatchTokenMessage: ({ expected }) => tokenLabel(expected),
+  buildNotAllInputParsedMessage: () => 'the end of the line',
+  buildNoViableAltMessage: ({ customUserDescription }) => customUserDescription ?? '',
+  buildEarlyExitMessage: ({ customUserDescription }) => customUserDescription ?? '',
+}
+
+function roundedPhrase(mark: Mark, operand: Phrase, right: Mark): Phrase {
+  return { kind: 'rounded', mark, operand, span: joinSpans(markSpan(mark), markSpan(right)) }
+}
+
+/**
+ * Parses one line at a time. Blocks are put together from lines elsewhere, so that a broken line costs itself alone
+ * and no depth of nesting of forms meets the stack.
+ */
+export class LineParser extends EmbeddedActionsParser {
+  constructor() {
+    super([...T.VOCABULARY], { maxLookahead: 2, recoveryEnabled: false, errorMessageProvider: expectations })
+    this.performSelfAnalysis()
+  }
+
+  // Expressions
+
+  /** An expression or condition, as far as it reaches. */
+  readonly phrase = this.RULE('phrase', (): Phrase => {
+    const parts: Part[] = []
+    this.SUBRULE(this.operand, { ARGS: [parts] })
+    this.MANY(() => {
+      parts.push(this.CONSUME(T.Infix) as Mark)
+      this.SUBRULE2(this.operand, { ARGS: [parts] })
+    })
+    return this.ACTION(() => arrangeParts(parts))
+  })
+
+  /** The body of a `sum`: ends where a condition would begin. */
+  private readonly arithmetic = this.RULE('arithmetic', (): Phrase => {
+    const parts: Part[] = []
+    this.SUBRULE(this.operand, { ARGS: [parts] })
+    this.MANY(() => {
+      parts.push(this.CONSUME(T.Arithmetic) as Mark)
+      this.SUBRULE2(this.operand, { ARGS: [parts] })
+    })
+    return this.ACTION(() => arrangeParts(parts))
+  })
+
+  private readonly operand: ParserMethod<[Part[]], void> = this.RULE('operand', (parts: Part[]): void => {
+    this.MANY(() => {
+      const mark = this.CONSUME(T.Prefix) as Mark
+      this.ACTION(() => parts.push(mark))
+    })
+    const phrase = this.OR<Phrase>({
+      DEF: [
+        { ALT: () => this.SUBRULE(this.numeral) },
+        { ALT: () => this.SUBRULE(this.named) },
+        { ALT: () => this.SUBRULE(this.group) },
+        { ALT: () => this.SUBRULE(this.indirect) },
+        { ALT: () => this.SUBRULE(this.rounded) },
+      ],
+      ERR_MSG: 'a name, a number or `(`',
+    })
+    this.ACTION(() => parts.push(phrase))
+  })
+
+  private readonly numeral = this.RULE('numeral', (): Phrase => {
+    const mark = this.CONSUME(T.Numeral) as Mark
+    return this.ACTION(() => ({ kind: 'number', mark, span: markSpan(mark) }))
+  })
+
+  private readonly group = this.RULE('group', (): Phrase => {
+    const left = this.CONSUME(T.LeftParen) as Mark
+    const inner = this.SUBRULE(this.phrase)
+    const right = this.CONSUME(T.RightParen) as Mark
+    return this.ACTION(() => ({ ...inner, span: joinSpans(markSpan(left), markSpan(right)) }))
+  })
+
+  private readonly indirect = this.RULE('indirect', (): Phrase => {
+    const left = this.CONSUME(T.LeftSquare) as Mark
+    const address = this.SUBRULE(this.phrase)
+    const right = this.CONSUME(T.RightSquare) as Mark
+    return this.ACTION(() => ({ kind: 'indirect', address, span: joinSpans(markSpan(left), markSpan(right)) }))
+  })
+
+  private readonly rounded = this.RULE('rounded', (): Phrase => {
+    return this.OR<Phrase>([
+      {
+        ALT: () => {
+          const mark = this.CONSUME(T.LeftCeil) as Mark
+          const operand = this.SUBRULE(this.phrase)
+          const right = this.CONSUME(T.RightCeil) as Mark
+          return this.ACTION(() => roundedPhrase(mark, operand, right))
+        },
+      },
+      {
+        ALT: () => {
+          const mark = this.CONSUME(T.LeftFloor) as Mark
+          const operand = this.SUBRULE2(this.phrase)
+          const right = this.CONSUME(T.RightFloor) as Mark
+          return this.ACTION(() => roundedPhrase(mark, operand, right))
+        },
+      },
+    ])
+  })
+
+  /** What begins with a name: the name alone, an element, a call, a quantifier. */
+  private readonly named: ParserMethod<[], Phrase> = this.RULE('named', (): Phrase => {
+    const mark = this.CONSUME(T.Name) as Mark
+    let phrase: Phrase = this.ACTION(() => ({ kind: 'name', mark, span: markSpan(mark) }))
+    let quantified = false
+    this.OPTION({
+      GATE: () => T.isOf(mark.tokenType, T.Quantifier) && this.LA(2).tokenType === T.In,
+      DEF: () => {
+        quantified = true
+        phrase = this.SUBRULE(this.quantified, { ARGS: [mark] })
+      },
+    })
+    this.OPTION2({
+      GATE: () => !quantified,
+      DEF: () => {
+        const values: Phrase[] = []
+        this.CONSUME(T.LeftParen)
+        this.MANY_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE(this.phrase)) })
+        const right = this.CONSUME(T.RightParen) as Mark
+        this.ACTION(() => {
+          phrase = { kind: 'call', mark, arguments: values, span: joinSpans(markSpan(mark), markSpan(right)) }
+        })
+      },
+    })
+    this.MANY({
+      GATE: () => !quantified,
+      DEF: () => {
+        this.CONSUME(T.LeftSquare)
+        const index = this.SUBRULE2(this.phrase)
+        const right = this.CONSUME(T.RightSquare) as Mark
+        this.ACTION(() => {
+          phrase = { kind: 'element', base: phrase, index, span: joinSpans(phrase.span, markSpan(right)) }
+        })
+      },
+    })
+    return phrase
+  })
+
+  private readonly quantified: ParserMethod<[Mark], Phrase> = this.RULE('quantified', (mark: Mark): Phrase => {
+    const index = this.CONSUME(T.Name) as Mark
+    this.CONSUME(T.In)
+    const from = this.SUBRULE(this.phrase)
+    this.CONSUME(T.Range)
+    const to = this.SUBRULE2(this.phrase)
+    this.CONSUME(T.Colon)
+    const body = this.OR([
+      { GATE: () => mark.tokenType === T.Sum, ALT: () => this.SUBRULE(this.arithmetic) },
+      { ALT: () => this.SUBRULE3(this.phrase), IGNORE_AMBIGUITIES: true },
+    ])
+    return this.ACTION(() => ({
+      kind: 'quantified',
+      mark,
+      index,
+      from,
+      to,
+      body,
+      span: joinSpans(markSpan(mark), body.span),
+    }))
+  })
+
+  // Declarations
+
+  readonly routineLine = this.RULE('routineLine', (): LineForm => {
+    this.CONSUME(T.Routine)
+    return { kind: 'routine', name: this.CONSUME(T.Name) as Mark }
+  })
+
+  readonly itemsLine = this.RULE('itemsLine', (): LineForm => {
+    const items: ItemForm[] = []
+    const word = this.CONSUME(T.Name) as Mark
+    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => items.push(this.SUBRULE(this.item)) })
+    return { kind: 'items', word, items }
+  })
+
+  private readonly item = this.RULE('item', (): ItemForm => {
+    const name = this.CONSUME(T.Name) as Mark
+    let form: ItemForm = this.ACTION(() => ({ name, span: markSpan(name) }))
+    this.OPTION(() => {
+      this.CONSUME(T.LeftSquare)
+      const length = this.SUBRULE(this.phrase)
+      const right = this.CONSUME(T.RightSquare) as Mark
+      this.ACTION(() => {
+        form = { name, length, span: joinSpans(markSpan(name), markSpan(right)) }
+      })
+    })
+    return form
+  })
+
+  readonly letLine = this.RULE('letLine', (): LineForm => {
+    this.CONSUME(T.Let)
+    const name = this.CONSUME(T.Name) as Mark
+    const equal = this.SUBRULE(this.equal)
+    return { kind: 'let', name, equal, value: this.SUBRULE(this.phrase) }
+  })
+
+  /** `=`, or an arrow in its place. */
+  private readonly equal = this.RULE('equal', (): Mark => {
+    return this.OR({
+      DEF: [
+        { ALT: () => this.CONSUME(T.Equal) as Mark },
+        { ALT: () => this.CONSUME(T.Arrow) as Mark },
+        { ALT: () => this.CONSUME(T.ColonEqual) as Mark },
+        { ALT: () => this.CONSUME(T.DoubleEqual) as Mark },
+      ],
+      ERR_MSG: '`=`',
+    })
+  })
+
+  readonly fixLine = this.RULE('fixLine', (): LineForm => {
+    const values: Phrase[] = []
+    let length: Phrase | undefined
+    let range: RangeForm | undefined
+    this.CONSUME(T.Fix)
+    const name = this.CONSUME(T.Name) as Mark
+    this.OPTION(() => {
+      this.CONSUME(T.LeftSquare)
+      this.OR([
+        {
+          GATE: () => this.LA(2).tokenType === T.In,
+          ALT: () => {
+            range = this.SUBRULE(this.range)
+          },
+          IGNORE_AMBIGUITIES: true,
+        },
+        {
+          ALT: () => {
+            length = this.SUBRULE(this.phrase)
+          },
+        },
+      ])
+      this.CONSUME(T.RightSquare)
+    })
+    const equal = this.SUBRULE(this.equal)
+    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE2(this.phrase)) })
+    return { kind: 'fix', name, ...(length && { length }), ...(range && { range }), equal, values }
+  })
+
+  private readonly range = this.RULE('range', (): RangeForm => {
+    const index = this.CONSUME(T.Name) as Mark
+    this.CONSUME(T.In)
+    const from = this.SUBRULE(this.phrase)
+    this.CONSUME(T.Range)
+    return { index, from, to: this.SUBRULE2(this.phrase) }
+  })
+
+  readonly needLine = this.RULE('needLine', (): LineForm => {
+    this.CONSUME(T.Need)
+    return { kind: 'need', condition: this.SUBRULE(this.phrase) }
+  })
+
+  readonly checkLine = this.RULE('checkLine', (): LineForm => {
+    this.CONSUME(T.Check)
+    return { kind: 'check', condition: this.SUBRULE(this.phrase) }
+  })
+
+  readonly feedLine = this.RULE('feedLine', (): LineForm => {
+    let index: Mark | undefined
+    this.CONSUME(T.Feed)
+    const name = this.CONSUME(T.Name) as Mark
+    this.OPTION(() => {
+      this.CONSUME(T.LeftSquare)
+      index = this.CONSUME2(T.Name) as Mark
+      this.CONSUME(T.RightSquare)
+    })
+    return this.OR<LineForm>({
+      DEF: [
+        {
+          ALT: () => {
+            this.CONSUME(T.In)
+            const from = this.SUBRULE(this.phrase)
+            this.CONSUME(T.Range)
+            const to = this.SUBRULE2(this.phrase)
+            return { kind: 'feed', name, ...(index && { index }), from, to }
+          },
+        },
+        {
+          ALT: () => {
+            this.CONSUME(T.Distinct)
+            return { kind: 'distinct', name }
+          },
+        },
+      ],
+      ERR_MSG: '`in` or `distinct`',
+    })
+  })
+
+  readonly claimLine = this.RULE('claimLine', (): LineForm => {
+    this.CONSUME(T.Claim)
+    const measure = this.OR({
+      DEF: [{ ALT: () => this.CONSUME(T.Time) as Mark }, { ALT: () => this.CONSUME(T.Space) as Mark }],
+      ERR_MSG: '`time` or `space`',
+    })
+    const operator = this.OR2({
+      DEF: [
+        { ALT: () => this.CONSUME(T.LessEqual) as Mark },
+        { ALT: () => this.CONSUME(T.Equal) as Mark },
+        { ALT: () => this.CONSUME(T.Less) as Mark },
+        { ALT: () => this.CONSUME(T.WrongLessEqual) as Mark },
+        { ALT: () => this.CONSUME(T.DoubleEqual) as Mark },
+      ],
+      ERR_MSG: '`<=` or `=`',
+    })
+    return { kind: 'claim', measure, operator, bound: this.SUBRULE(this.phrase) }
+  })
+
+  readonly procedureLine = this.RULE('procedureLine', (): LineForm => {
+    const parameters: Mark[] = []
+    const results: Mark[] = []
+    this.CONSUME(T.Procedure)
+    const name = this.CONSUME(T.Name) as Mark
+    this.CONSUME(T.LeftParen)
+    this.MANY_SEP({ SEP: T.Comma, DEF: () => parameters.push(this.CONSUME2(T.Name) as Mark) })
+    this.CONSUME(T.RightParen)
+    this.OPTION(() => {
+      this.CONSUME(T.Gives)
+      this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => results.push(this.CONSUME3(T.Name) as Mark) })
+    })
+    return { kind: 'procedure', name, parameters, results }
+  })
+
+  // Instructions
+
+  readonly ifLine = this.RULE('ifLine', (): LineForm => {
+    let label: Mark | undefined
+    this.CONSUME(T.If)
+    const condition = this.SUBRULE(this.phrase)
+    this.OPTION(() => this.CONSUME(T.Then))
+    this.OPTION2(() => {
+      this.CONSUME(T.Goto)
+      label = this.CONSUME(T.Name) as Mark
+    })
+    return { kind: 'if', condition, ...(label && { label }) }
+  })
+
+  readonly elseLine = this.RULE('elseLine', (): LineForm => {
+    let condition: Phrase | undefined
+    this.CONSUME(T.Else)
+    this.OPTION(() => {
+      this.CONSUME(T.If)
+      condition = this.SUBRULE(this.phrase)
+      this.OPTION2(() => this.CONSUME(T.Then))
+    })
+    return { kind: 'else', ...(condition && { condition }) }
+  })
+
+  readonly whileLine = this.RULE('whileLine', (): LineForm => {
+    this.CONSUME(T.While)
+    const condition = this.SUBRULE(this.phrase)
+    this.OPTION(() => this.CONSUME(T.Do))
+    return { kind: 'while', condition }
+  })
+
+  readonly untilLine = this.RULE('untilLine', (): LineForm => {
+    this.CONSUME(T.Until)
+    return { kind: 'until', condition: this.SUBRULE(this.phrase) }
+  })
+
+  readonly forLine = this.RULE('forLine', (): LineForm => {
+    let step: Phrase | undefined
+    this.CONSUME(T.For)
+    const variable = this.CONSUME(T.Name) as Mark
+    const opening = this.OR({
+      DEF: [
+        { ALT: () => this.CONSUME(T.From) as Mark },
+        { ALT: () => this.CONSUME(T.In) as Mark },
+        { ALT: () => this.CONSUME(T.Assign) as Mark },
+      ],
+      ERR_MSG: '`from`',
+    })
+    const from = this.SUBRULE(this.phrase)
+    const direction = this.OR2({
+      DEF: [
+        { ALT: () => this.CONSUME(T.To) as Mark },
+        { ALT: () => this.CONSUME(T.Downto) as Mark },
+        { ALT: () => this.CONSUME(T.Range) as Mark },
+      ],
+      ERR_MSG: '`to` or `downto`',
+    })
+    const to = this.SUBRULE2(this.phrase)
+    this.OPTION(() => {
+      this.CONSUME(T.By)
+      step = this.SUBRULE3(this.phrase)
+    })
+    this.OPTION2(() => this.CONSUME(T.Do))
+    return { kind: 'for', variable, opening, from, direction, to, ...(step && { step }) }
+  })
+
+  readonly beginLine = this.RULE('beginLine', (): LineForm => {
+    this.CONSUME(T.Begin)
+    return { kind: 'begin' }
+  })
+
+  readonly endLine = this.RULE('endLine', (): LineForm => {
+    this.CONSUME(T.End)
+    return { kind: 'end' }
+  })
+
+  readonly repeatLine = this.RULE('repeatLine', (): LineForm => {
+    this.CONSUME(T.Repeat)
+    return { kind: 'repeat' }
+  })
+
+  readonly haltLine = this.RULE('haltLine', (): LineForm => {
+    this.CONSUME(T.Halt)
+    return { kind: 'halt' }
+  })
+
+  readonly gotoLine = this.RULE('gotoLine', (): LineForm => {
+    this.CONSUME(T.Goto)
+    return { kind: 'goto', label: this.CONSUME(T.Name) as Mark }
+  })
+
+  readonly returnLine = this.RULE('returnLine', (): LineForm => {
+    const values: Phrase[] = []
+    this.CONSUME(T.Return)
+    this.MANY_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE(this.phrase)) })
+    return { kind: 'return', values }
+  })
+
+  readonly assertLine = this.RULE('assertLine', (): LineForm => {
+    this.CONSUME(T.Assert)
+    return { kind: 'assert', condition: this.SUBRULE(this.phrase) }
+  })
+
+  readonly assignLine = this.RULE('assignLine', (): LineForm => {
+    const places: Phrase[] = []
+    const values: Phrase[] = []
+    let arrow: Mark | undefined
+    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => places.push(this.SUBRULE(this.place)) })
+    this.OPTION(() => {
+      this.OR([
+        {
+          ALT: () => {
+            arrow = this.CONSUME(T.Assign) as Mark
+            this.AT_LEAST_ONE_SEP2({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE(this.phrase)) })
+          },
+        },
+        {
+          ALT: () => {
+            arrow = this.CONSUME(T.PlusPlus) as Mark
+          },
+        },
+        {
+          ALT: () => {
+            arrow = this.CONSUME(T.MinusMinus) as Mark
+          },
+        },
+      ])
+    })
+    return { kind: 'assign', places, ...(arrow && { arrow }), values }
+  })
+
+  private readonly place = this.RULE('place', (): Phrase => {
+    return this.OR({
+      DEF: [{ ALT: () => this.SUBRULE(this.named) }, { ALT: () => this.SUBRULE(this.indirect) }],
+      ERR_MSG: 'an instruction',
+    })
+  })
+}
