@@ -60,19 +60,20 @@ export function pointOutcome(result: PointResult | undefined): PointOutcome {
   return result.verdicts.some(verdict => verdict.outcome === 'undecided') ? 'undecided' : 'holds'
 }
 
-/** The reading point a sweep opens with: the first broken one by n, then w; else the largest that was run. */
-export function firstReading(record: Pick<SweepRecord, 'points' | 'results'>): Reading | undefined {
-  const done = record.results.filter(result => result !== undefined)
-  const broken = done
+/**
+ * The reading that results ask for: the first broken point by n, then w; else the largest counted of a sweep that has
+ * ended. While it runs the first counted one stands, so that figures in the margin don't flicker.
+ */
+export function firstReading(record: Pick<SweepRecord, 'results'>, ended: boolean): Reading | undefined {
+  const counted = record.results.filter(result => result?.status === 'done') as PointResult[]
+  const broken = counted
     .filter(result => pointOutcome(result) === 'broken')
     .sort((a, b) => a.point.n - b.point.n || a.point.width - b.point.width || a.point.index - b.point.index)[0]
   if (broken) return { point: broken.point.index, trial: brokenTrial(broken) }
-  const counted = done.filter(result => result.status === 'done')
-  const last = counted.reduce<PointResult | undefined>(
-    (best, each) => (best && best.point.n >= each.point.n ? best : each),
-    undefined,
-  )
-  return last && { point: last.point.index, trial: 0 }
+  const [first] = counted
+  if (!first) return undefined
+  const shown = ended ? counted.reduce((most, each) => (each.point.n > most.point.n ? each : most)) : first
+  return { point: shown.point.index, trial: 0 }
 }
 
 function brokenTrial(result: PointResult): number {
