@@ -295,7 +295,7 @@ class Assembly {
     if (count === 0) return 0
     if (role.kind === 'declaration' && this.phase === 'declarations' && line.strays.length === 0) return 0
     if (role.kind === 'begin' || line.strays.length > 0) return count
-    this.requireBody(line)
+    if (this.frames.length === 0) this.requireBody(line)
     for (let at = 0; at < count; at += 2) {
       const name = nameOf(line.tokens[at]!)
       this.add({ kind: 'label', name, span: joinSpans(name.span, markSpan(line.tokens[at + 1]!)) })
