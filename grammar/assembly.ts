@@ -116,7 +116,10 @@ class Assembly {
   }
 
   private take(line: Line, role: Role): void {
-    if (isHeader(role)) return this.open(line)
+    if (isHeader(role)) {
+      this.open(line)
+      return
+    }
     if (this.phase === 'before') this.openUnnamed(line)
     if (this.phase === 'after' && !this.reopen(line, role)) return
 
@@ -124,17 +127,23 @@ class Assembly {
     if (from === line.tokens.length && from > 0) return
     switch (role.kind) {
       case 'open':
-        return this.openForm(line, from, role.form as Frame['kind'])
+        this.openForm(line, from, role.form as Frame['kind'])
+        break
       case 'middle':
-        return this.takeElse(line, from)
+        this.takeElse(line, from)
+        break
       case 'close':
-        return this.takeEnd(line, from, role.until)
+        this.takeEnd(line, from, role.until)
+        break
       case 'begin':
-        return this.takeBegin(line, from)
+        this.takeBegin(line, from)
+        break
       case 'declaration':
-        return this.takeDeclaration(line, from)
+        this.takeDeclaration(line, from)
+        break
       case 'instruction':
-        return this.takeInstruction(line, from)
+        this.takeInstruction(line, from)
+        break
     }
   }
 
@@ -314,7 +323,10 @@ class Assembly {
     if (misplaced) {
       const [first, , third] = line.tokens.slice(from)
       // `let x <- y + z` means the assignment.
-      if (first?.tokenType === T.Let && third && third.tokenType === T.Arrow) return this.takeLet(line, from, first)
+      if (first?.tokenType === T.Let && third?.tokenType === T.Arrow) {
+        this.takeLet(line, from, first)
+        return
+      }
       this.refuseMisplaced(line, from)
     }
     const form = this.reader.readDeclaration(line, from)
@@ -379,7 +391,10 @@ class Assembly {
   // Forms
 
   private openForm(line: Line, from: number, kind: Frame['kind']): void {
-    if (kind === 'procedure') return this.openProcedure(line, from)
+    if (kind === 'procedure') {
+      this.openProcedure(line, from)
+      return
+    }
     if (this.frames.length === 0) this.requireBody(line)
     const span = this.spanFrom(line, from)
     const form = this.reader.readInstruction(line, from)
@@ -564,17 +579,20 @@ class Assembly {
     const { body } = frame
     switch (frame.kind) {
       case 'while':
-        return this.add({ kind: 'while', condition: frame.condition, body, end, span })
+        this.add({ kind: 'while', condition: frame.condition, body, end, span })
+        break
       case 'repeat':
-        return this.add({ kind: 'repeat', body, until, end, span })
+        this.add({ kind: 'repeat', body, until, end, span })
+        break
       case 'for':
         // A loop whose first line means nothing keeps its instructions out of the tree.
         if (frame.parts) this.add({ kind: 'for', ...frame.parts, body, end, span })
-        return
+        break
       case 'if': {
         this.closeBranch(frame)
         const otherwise = frame.otherwise && { otherwise: { body, span: frame.otherwise } }
-        return this.add({ kind: 'if', branches: frame.branches, ...otherwise, end, span })
+        this.add({ kind: 'if', branches: frame.branches, ...otherwise, end, span })
+        break
       }
       case 'procedure': {
         if (!frame.form) return

@@ -183,7 +183,7 @@ export function readLines(text: string): Reading {
   const comments: Reading['comments'][number][] = []
   const commented = new Set<number>()
   let place = 0
-  for (const { startOffset, image } of lexed.groups['comments'] ?? []) {
+  for (const { startOffset, image } of lexed.groups.comments ?? []) {
     while (place + 1 < starts.length && starts[place + 1]! <= startOffset) place++
     const body = image.slice(1).trimEnd()
     comments.push({

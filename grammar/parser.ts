@@ -1,3 +1,4 @@
+// biome-ignore-all lint/correctness/noComponentHookFactories: Chevrotain's alternatives (`ALT`) are no components.
 import { EmbeddedActionsParser, type IParserErrorMessageProvider, type ParserMethod, tokenLabel } from 'chevrotain'
 import { type Mark, markSpan } from './lines'
 import { arrangeParts, type Part, type Phrase } from './phrase'
