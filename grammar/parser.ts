@@ -1,5 +1,12 @@
 // biome-ignore-all lint/correctness/noComponentHookFactories: Chevrotain's alternatives (`ALT`) are no components.
-import { EmbeddedActionsParser, type IParserErrorMessageProvider, type ParserMethod, tokenLabel } from 'chevrotain'
+import {
+  type DSLMethodOpts,
+  EmbeddedActionsParser,
+  type IParserErrorMessageProvider,
+  type OrMethodOpts,
+  type ParserMethod,
+  tokenLabel,
+} from 'chevrotain'
 import { type Mark, markSpan } from './lines'
 import { arrangeParts, type Part, type Phrase } from './phrase'
 import { joinSpans, type Span } from './span'
@@ -90,6 +97,13 @@ function roundedPhrase(mark: Mark, operand: Phrase, right: Mark): Phrase {
  * and no depth of nesting of forms meets the stack.
  */
 export class LineParser extends EmbeddedActionsParser {
+  /** The name just taken. Read before any other rule begins. */
+  private head: Mark | undefined
+  // Alternatives of the rules that run most, made once.
+  private operands: OrMethodOpts<Phrase> | undefined
+  private places: OrMethodOpts<Phrase> | undefined
+  private continuation: DSLMethodOpts<Phrase> | undefined
+
   constructor() {
     super([...T.VOCABULARY], { maxLookahead: 2, recoveryEnabled: false, errorMessageProvider: expectations })
     this.performSelfAnalysis()
@@ -124,7 +138,7 @@ export class LineParser extends EmbeddedActionsParser {
       const mark = this.CONSUME(T.Prefix) as Mark
       this.ACTION(() => parts.push(mark))
     })
-    const phrase = this.OR<Phrase>({
+    this.operands ??= {
       DEF: [
         { ALT: () => this.SUBRULE(this.numeral) },
         { ALT: () => this.SUBRULE(this.named) },
@@ -133,7 +147,8 @@ export class LineParser extends EmbeddedActionsParser {
         { ALT: () => this.SUBRULE(this.rounded) },
       ],
       ERR_MSG: 'a name, a number or `(`',
-    })
+    }
+    const phrase = this.OR<Phrase>(this.operands)
     this.ACTION(() => parts.push(phrase))
   })
 
@@ -180,37 +195,57 @@ export class LineParser extends EmbeddedActionsParser {
   /** What begins with a name: the name alone, an element, a call, a quantifier. */
   private readonly named: ParserMethod<[], Phrase> = this.RULE('named', (): Phrase => {
     const mark = this.CONSUME(T.Name) as Mark
-    let phrase: Phrase = this.ACTION(() => ({ kind: 'name', mark, span: markSpan(mark) }))
-    let quantified = false
-    this.OPTION({
-      GATE: () => T.isOf(mark.tokenType, T.Quantifier) && this.LA(2).tokenType === T.In,
-      DEF: () => {
-        quantified = true
-        phrase = this.SUBRULE(this.quantified, { ARGS: [mark] })
+    this.head = mark
+    this.continuation ??= {
+      // A name after a name goes on in `sum i in` alone.
+      GATE: () => !T.isOf(this.LA(1).tokenType, T.Name) || this.quantifies(),
+      DEF: () => this.SUBRULE(this.suffix, { ARGS: [this.head!] }),
+    }
+    const phrase = this.OPTION(this.continuation)
+    return phrase ?? this.ACTION(() => ({ kind: 'name', mark, span: markSpan(mark) }))
+  })
+
+  private quantifies(): boolean {
+    return T.isOf(this.head!.tokenType, T.Quantifier) && this.LA(2).tokenType === T.In
+  }
+
+  private readonly suffix: ParserMethod<[Mark], Phrase> = this.RULE('suffix', (mark: Mark): Phrase => {
+    return this.OR<Phrase>([
+      { ALT: () => this.SUBRULE(this.quantified, { ARGS: [mark] }) },
+      { ALT: () => this.SUBRULE(this.call, { ARGS: [mark] }) },
+      {
+        ALT: () => {
+          const base: Phrase = this.ACTION(() => ({ kind: 'name', mark, span: markSpan(mark) }))
+          return this.SUBRULE(this.elements, { ARGS: [base] })
+        },
       },
-    })
-    this.OPTION2({
-      GATE: () => !quantified,
-      DEF: () => {
-        const values: Phrase[] = []
-        this.CONSUME(T.LeftParen)
-        this.MANY_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE(this.phrase)) })
-        const right = this.CONSUME(T.RightParen) as Mark
-        this.ACTION(() => {
-          phrase = { kind: 'call', mark, arguments: values, span: joinSpans(markSpan(mark), markSpan(right)) }
-        })
-      },
-    })
-    this.MANY({
-      GATE: () => !quantified,
-      DEF: () => {
-        this.CONSUME(T.LeftSquare)
-        const index = this.SUBRULE2(this.phrase)
-        const right = this.CONSUME(T.RightSquare) as Mark
-        this.ACTION(() => {
-          phrase = { kind: 'element', base: phrase, index, span: joinSpans(phrase.span, markSpan(right)) }
-        })
-      },
+    ])
+  })
+
+  private readonly call: ParserMethod<[Mark], Phrase> = this.RULE('call', (mark: Mark): Phrase => {
+    const values: Phrase[] = []
+    this.CONSUME(T.LeftParen)
+    this.MANY_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE(this.phrase)) })
+    const right = this.CONSUME(T.RightParen) as Mark
+    const call: Phrase = this.ACTION(() => ({
+      kind: 'call',
+      mark,
+      arguments: values,
+      span: joinSpans(markSpan(mark), markSpan(right)),
+    }))
+    return this.OPTION(() => this.SUBRULE(this.elements, { ARGS: [call] })) ?? call
+  })
+
+  /** `[i]` after what it indexes, once or, wrongly, more often. */
+  private readonly elements: ParserMethod<[Phrase], Phrase> = this.RULE('elements', (base: Phrase): Phrase => {
+    let phrase = base
+    this.AT_LEAST_ONE(() => {
+      this.CONSUME(T.LeftSquare)
+      const index = this.SUBRULE(this.phrase)
+      const right = this.CONSUME(T.RightSquare) as Mark
+      this.ACTION(() => {
+        phrase = { kind: 'element', base: phrase, index, span: joinSpans(phrase.span, markSpan(right)) }
+      })
     })
     return phrase
   })
@@ -502,37 +537,32 @@ export class LineParser extends EmbeddedActionsParser {
   })
 
   readonly assignLine = this.RULE('assignLine', (): LineForm => {
-    const places: Phrase[] = []
+    const places = [this.SUBRULE(this.place)]
+    this.MANY(() => {
+      this.CONSUME(T.Comma)
+      places.push(this.SUBRULE2(this.place))
+    })
     const values: Phrase[] = []
     let arrow: Mark | undefined
-    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => places.push(this.SUBRULE(this.place)) })
     this.OPTION(() => {
-      this.OR([
-        {
-          ALT: () => {
-            arrow = this.CONSUME(T.Assign) as Mark
-            this.AT_LEAST_ONE_SEP2({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE(this.phrase)) })
-          },
-        },
-        {
-          ALT: () => {
-            arrow = this.CONSUME(T.PlusPlus) as Mark
-          },
-        },
-        {
-          ALT: () => {
-            arrow = this.CONSUME(T.MinusMinus) as Mark
-          },
-        },
-      ])
+      arrow = this.CONSUME(T.Assign) as Mark
+      values.push(this.SUBRULE(this.phrase))
+      this.MANY2(() => {
+        this.CONSUME2(T.Comma)
+        values.push(this.SUBRULE2(this.phrase))
+      })
+    })
+    this.OPTION2(() => {
+      arrow = this.CONSUME(T.Step) as Mark
     })
     return { kind: 'assign', places, ...(arrow && { arrow }), values }
   })
 
   private readonly place = this.RULE('place', (): Phrase => {
-    return this.OR({
+    this.places ??= {
       DEF: [{ ALT: () => this.SUBRULE(this.named) }, { ALT: () => this.SUBRULE(this.indirect) }],
       ERR_MSG: 'an instruction',
-    })
+    }
+    return this.OR<Phrase>(this.places)
   })
 }

@@ -1,5 +1,5 @@
 import type { TokenType } from 'chevrotain'
-import type { Mark } from './lines'
+import { type Mark, markSpan } from './lines'
 import { joinSpans, type Span } from './span'
 import * as T from './tokens'
 
@@ -90,30 +90,31 @@ export type Part = Phrase | Mark
 
 /** Puts a chain of operands and operators into a tree by what binds tightest. Equals go to the left, `^` to the right. */
 export function arrangeParts(parts: readonly Part[]): Phrase {
-  if (parts.length === 1) return parts[0] as Phrase
-  let at = 0
+  return parts.length === 1 ? (parts[0] as Phrase) : readChain({ parts, at: 0 }, 0)
+}
 
-  const readOperand = (): Phrase => {
-    const part = parts[at++]!
-    if ('kind' in part) return part
-    const operand = readChain(prefixLevel(part) + 1)
-    const start = { start: part.startOffset, end: part.startOffset, line: part.startLine, column: part.startColumn }
-    return { kind: 'prefix', mark: part, operand, span: joinSpans(start, operand.span) }
+interface Cursor {
+  readonly parts: readonly Part[]
+  at: number
+}
+
+function readOperand(cursor: Cursor): Phrase {
+  const part = cursor.parts[cursor.at++]!
+  if ('kind' in part) return part
+  const operand = readChain(cursor, prefixLevel(part) + 1)
+  return { kind: 'prefix', mark: part, operand, span: joinSpans(markSpan(part), operand.span) }
+}
+
+/** Reads on while operators bind at least as tightly as `least`. */
+function readChain(cursor: Cursor, least: number): Phrase {
+  let left = readOperand(cursor)
+  while (cursor.at < cursor.parts.length) {
+    const mark = cursor.parts[cursor.at] as Mark
+    const level = infixLevel(mark)
+    if (level < least) break
+    cursor.at++
+    const right = readChain(cursor, level === LEVEL.power ? level : level + 1)
+    left = { kind: 'binary', mark, left, right, span: joinSpans(left.span, right.span) }
   }
-
-  // Reads on while operators bind at least as tightly as `least`.
-  const readChain = (least: number): Phrase => {
-    let left = readOperand()
-    while (at < parts.length) {
-      const mark = parts[at] as Mark
-      const level = infixLevel(mark)
-      if (level < least) break
-      at++
-      const right = readChain(level === LEVEL.power ? level : level + 1)
-      left = { kind: 'binary', mark, left, right, span: joinSpans(left.span, right.span) }
-    }
-    return left
-  }
-
-  return readChain(0)
+  return left
 }

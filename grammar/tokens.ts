@@ -25,6 +25,8 @@ export const Arithmetic = createToken({
 export const Prefix = createToken({ name: 'Prefix', label: 'an operator', pattern: Lexer.NA })
 /** The arrow, and what other languages write in its place. */
 export const Assign = createToken({ name: 'Assign', label: '`<-`', pattern: Lexer.NA })
+/** `++` and `--`, which other languages have. */
+export const Step = createToken({ name: 'Step', label: '`<-`', pattern: Lexer.NA })
 /** `sum`, `all`, `any`. */
 export const Quantifier = createToken({ name: 'Quantifier', label: '`sum`', pattern: Lexer.NA, categories: [Name] })
 
@@ -104,9 +106,12 @@ export const Distinct = placed('distinct')
 all.push(Name)
 
 // Signs. Of two that begin alike the longer comes first. The wrong ones are there to be understood and corrected.
-export const PlusPlus = token('PlusPlus', '++')
+export const PlusPlus = token('PlusPlus', '++', { categories: [Step] })
 // Two minus signs are a decrement only where nothing follows: `x - -y` is in order.
-export const MinusMinus = token('MinusMinus', /--(?![ \t]*[^ \t\r\n#;])/, { label: '`--`' })
+export const MinusMinus = token('MinusMinus', /--(?![ \t]*[^ \t\r\n#;])/, {
+  label: '`--`',
+  categories: [Step],
+})
 export const CompoundAssign = token('CompoundAssign', /(?:\+|-|\*|&|\||\^|%|<<|>>)=/, { categories: [Assign] })
 export const Arrow = token('Arrow', /<-|←|⟵/, { label: '`<-`', categories: [Assign] })
 export const Gives = token('Gives', /->|→|⟶/, { label: '`->`' })
@@ -155,7 +160,7 @@ export const Colon = token('Colon', ':')
 export const Range = token('Range', /\.\.\.?|…/, { label: '`..`' })
 
 /** Every token type, in the order in which they are tried; categories last. */
-export const VOCABULARY: readonly TokenType[] = [...all, Infix, Arithmetic, Prefix, Assign, Quantifier]
+export const VOCABULARY: readonly TokenType[] = [...all, Infix, Arithmetic, Prefix, Assign, Step, Quantifier]
 
 /** The words that open a declaration. */
 export const DECLARATION_WORDS: ReadonlySet<TokenType> = new Set([
