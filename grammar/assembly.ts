@@ -321,6 +321,11 @@ class Assembly {
   private takeDeclaration(line: Line, from: number): void {
     const misplaced = this.phase !== 'declarations' || this.frames.length > 0
     if (misplaced) {
+      // `check(x)` among instructions calls a procedure of that name.
+      if (isCall(line.tokens, from)) {
+        this.takeInstruction(line, from)
+        return
+      }
       const [first, , third] = line.tokens.slice(from)
       // `let x <- y + z` means the assignment.
       if (first?.tokenType === T.Let && third?.tokenType === T.Arrow) {
@@ -611,6 +616,18 @@ class Assembly {
       }
     }
   }
+}
+
+/** Whether the tokens from `from` on are a name and one pair of brackets. */
+function isCall(tokens: readonly Mark[], from: number): boolean {
+  if (tokens[from + 1]?.tokenType !== T.LeftParen) return false
+  let open = 0
+  for (let at = from + 1; at < tokens.length; at++) {
+    const type = tokens[at]!.tokenType
+    if (type === T.LeftParen) open++
+    else if (type === T.RightParen && --open === 0) return at === tokens.length - 1
+  }
+  return false
 }
 
 /** Edits at one place as one edit, in the order in which they were listed. */

@@ -97,6 +97,11 @@ function roundedPhrase(mark: Mark, operand: Phrase, right: Mark): Phrase {
  * and no depth of nesting of forms meets the stack.
  */
 export class LineParser extends EmbeddedActionsParser {
+  /**
+   * Whether `sum i in` opens a sum. Set before a line is parsed; false for the first line of a `for`, where names and
+   * the words between them may come in that order (`for i from sum to in`).
+   */
+  quantifiers = true
   /** The name just taken. Read before any other rule begins. */
   private head: Mark | undefined
   // Alternatives of the rules that run most, made once.
@@ -206,7 +211,7 @@ export class LineParser extends EmbeddedActionsParser {
   })
 
   private quantifies(): boolean {
-    return T.isOf(this.head!.tokenType, T.Quantifier) && this.LA(2).tokenType === T.In
+    return this.quantifiers && T.isOf(this.head!.tokenType, T.Quantifier) && this.LA(2).tokenType === T.In
   }
 
   private readonly suffix: ParserMethod<[Mark], Phrase> = this.RULE('suffix', (mark: Mark): Phrase => {
@@ -330,7 +335,10 @@ export class LineParser extends EmbeddedActionsParser {
       this.CONSUME(T.LeftSquare)
       this.OR([
         {
-          GATE: () => this.LA(2).tokenType === T.In,
+          // `t[sum in in 1..2 : E]` is a length, a sum over an index that is called `in`.
+          GATE: () =>
+            this.LA(2).tokenType === T.In &&
+            !(T.isOf(this.LA(1).tokenType, T.Quantifier) && this.LA(3).tokenType === T.In),
           ALT: () => {
             range = this.SUBRULE(this.range)
           },

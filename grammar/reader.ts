@@ -126,6 +126,7 @@ export class LineReader {
     if (!this.admit(line)) return undefined
     const parser = sharedParser()
     parser.input = line.tokens as Mark[]
+    parser.quantifiers = true
     const phrase = parser.phrase()
     return this.accepted(line, 0, 'one expression') ? phrase : undefined
   }
@@ -134,6 +135,7 @@ export class LineReader {
     if (!this.admit(line)) return undefined
     const parser = sharedParser()
     parser.input = (from === 0 ? line.tokens : line.tokens.slice(from)) as Mark[]
+    parser.quantifiers = rule !== 'forLine'
     const read = parser[rule]()
     return this.accepted(line, from, form) ? read : undefined
   }
