@@ -2,7 +2,7 @@ import type { Binding, Input } from '../machine/run'
 import type { Routine } from '../routine/routine'
 import type { Words } from '../routine/words'
 import { freshWords, setWord } from './draw'
-import { hashText } from './seed'
+import { junkOf } from './feed'
 
 // Input that a user brings: {"a": [1, 2, "0xffff"], "x": 5}. Numbers, or strings for words past 2^53.
 
@@ -88,7 +88,7 @@ export function readInput(json: string | Data, binding: Binding, seed = 1): { in
     if (typeof word === 'string') return { problem: `${name} ${word}` }
     scalars[name] = word
   }
-  return { input: { arrays, scalars, junk: hashText(`${seed};junk`) } }
+  return { input: { arrays, scalars, junk: junkOf(seed) } }
 }
 
 const WORD_TEXT = /^(\d+|0x[0-9a-f]+)$/i

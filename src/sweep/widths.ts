@@ -1,6 +1,6 @@
 import { parseExact } from '../../grammar'
 import { MAX_WIDTH, MIN_WIDTH } from '../machine/machine'
-import { evaluateExact, namesInExact } from '../routine'
+import { ceilWhole, evaluateExact, isProblem, namesInExact, type Scope } from '../routine'
 import { type Misread, splitList } from './misread'
 import type { WidthChoice } from './setting'
 import { parseValues } from './sizes'
@@ -68,6 +68,14 @@ export function widthAt(
   sizes: Readonly<Record<string, number>>,
 ): { width: number } | { problem: string } {
   if (choice.kind === 'fixed') return { width: choice.width }
-  const { expression, text } = choice
-  return { width: 0, ...{ expression, text, sizes, evaluateExact } }
+  const scope: Scope = {
+    number: name => (sizes[name] === undefined ? undefined : BigInt(sizes[name])),
+    content: () => undefined,
+  }
+  const value = evaluateExact(choice.expression, scope)
+  const bits = isProblem(value) ? value : ceilWhole(value)
+  if (isProblem(bits)) return { problem: `w = ${choice.text} cannot be worked out: ${bits.message}` }
+  if (bits < MIN_WIDTH || bits > MAX_WIDTH)
+    return { problem: `w = ${choice.text} is ${bits}, and words have ${MIN_WIDTH} to ${MAX_WIDTH} bits` }
+  return { width: Number(bits) }
 }
