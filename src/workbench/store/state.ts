@@ -19,6 +19,8 @@ export interface WorkbenchState {
   /** The user picked `reading`: results that come later don't move it. */
   readonly readingPicked: boolean
   readonly scales: Scales
+  /** The line that the page was last asked to show; a new object each time. */
+  readonly aim: { readonly line: number } | undefined
   readonly theme: ThemeChoice
   readonly systemIsDark: boolean
   readonly notices: readonly Notice[]

@@ -18,6 +18,8 @@ export interface Workbench extends Drafting, Sweeping, Keeping {
   /** Takes a setting; where its charges alone differ the finished sweep is weighed again. */
   takeSetting(text: SettingText): void
   read(reading: Reading): void
+  /** Puts the cursor on a line of the draft and brings it into view. */
+  goToLine(line: number): void
   takeScales(scales: Scales): void
   takeTheme(theme: ThemeChoice): void
   takeSystemTheme(isDark: boolean): void
@@ -44,6 +46,7 @@ export function createWorkbench(world: World): Workbench {
     scales: kept?.scales ?? DEFAULT_SCALES,
     theme,
     systemIsDark: world.systemIsDark,
+    aim: undefined,
     notices: [],
   }))
 
@@ -70,6 +73,7 @@ export function createWorkbench(world: World): Workbench {
       if (text.charges !== before.charges) sweeping.weighAgain()
     },
     read: reading => store.setState({ reading, readingPicked: true }),
+    goToLine: line => store.setState({ aim: { line } }),
     takeScales: scales => store.setState({ scales }),
     takeTheme: choice => store.setState({ theme: choice }),
     takeSystemTheme: systemIsDark => store.setState({ systemIsDark }),

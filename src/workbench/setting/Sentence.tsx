@@ -1,0 +1,204 @@
+import { Fragment, type ReactNode } from 'react'
+import type { Charges, InstructionSetName } from '../../machine/machine'
+import type { Setting, SizeRange, WidthChoice } from '../../sweep/setting'
+import { printWidth } from '../../sweep/widths'
+import { SizeValue } from '../marks/Count'
+import { DashKey, MarkerKey } from '../marks/Marker'
+import type { RoutineShape, SettingText } from '../store/setting-text'
+import { Slot } from './Slot'
+import { PATTERN_WORDS, readCharges, readRange, SET_ORDER } from './sentence-parts'
+
+export const SLOTS = ['widths', 'sets', 'charges', 'sizes', 'feed', 'trials'] as const
+export type SlotName = (typeof SLOTS)[number]
+
+export interface SentenceProps {
+  readonly shape: RoutineShape
+  /** What is written; shown where it cannot be read. */
+  readonly text: SettingText
+  /** What it comes to; absent where a part cannot be read. */
+  readonly setting: Setting | undefined
+  /** Slots whose editor is open. */
+  readonly open: readonly SlotName[]
+  readonly onOpen: (slot: SlotName) => void
+}
+
+/** The setting as the sentence that opens a theorem. It is the legend of every figure as well. */
+export function Sentence({ shape, text, setting, open, onOpen }: SentenceProps) {
+  function slot(name: SlotName, opens: string, children: ReactNode): ReactNode {
+    return (
+      <Slot id={`slot-${name}`} opens={opens} isOpen={open.includes(name)} onOpen={() => onOpen(name)}>
+        {children}
+      </Slot>
+    )
+  }
+  const sized = shape.sizes.length > 0
+  return (
+    <p className="sentence">
+      <b className="run-in">Setting.</b> On a word-RAM with{' '}
+      {slot(
+        'widths',
+        'change the word width',
+        setting ? <Widths widths={setting.widths} /> : <>w = {text.widths}</>,
+      )}
+      , {slot('sets', 'change the instruction sets', <Sets sets={text.sets} />)},{' '}
+      <ChargesPart
+        charges={setting?.charges}
+        written={text.charges}
+        slot={part => slot('charges', 'change the charges', part)}
+      />
+      {(sized || shape.lets.length > 0) && (
+        <>
+          , {sized ? 'for ' : 'with '}
+          {slot(
+            'sizes',
+            sized ? 'change sizes and lets' : 'change lets',
+            setting ? (
+              <Sizes shape={shape} setting={setting} />
+            ) : (
+              <>
+                {shape.sizes[0]} = {text.first}
+              </>
+            ),
+          )}
+        </>
+      )}
+      , on {slot('feed', 'change the input pattern', PATTERN_WORDS[text.pattern])},{' '}
+      {slot('trials', 'change trials and seed', <Trials trials={text.trials} seed={text.seed} />)}.
+    </p>
+  )
+}
+
+/** Items with what joins them. */
+function join(items: readonly ReactNode[], between: ReactNode, last: ReactNode = between): ReactNode {
+  return items.map((item, place) => (
+    // biome-ignore lint/suspicious/noArrayIndexKey: the place is all that an item is known by
+    <Fragment key={place}>
+      {place > 0 && (place === items.length - 1 ? last : between)}
+      {item}
+    </Fragment>
+  ))
+}
+
+function Widths({ widths }: { readonly widths: readonly WidthChoice[] }) {
+  return (
+    <>
+      <i>w</i> ={' '}
+      {join(
+        widths.map((choice, place) => (
+          <span className="together" key={printWidth(choice)}>
+            <MarkerKey width={place} set="full" />
+            {choice.kind === 'fixed' ? choice.width : <code>{choice.text}</code>}
+          </span>
+        )),
+        ', ',
+      )}
+    </>
+  )
+}
+
+const SET_PHRASES: Readonly<Record<InstructionSetName, string>> = {
+  full: 'with multiplication',
+  'no-multiply': 'without multiplication',
+  'add-only': 'by addition alone',
+  extended: 'with every class',
+}
+
+function Sets({ sets }: { readonly sets: readonly InstructionSetName[] }) {
+  if (sets.length === 0) return <>no instruction set</>
+  const both = sets.includes('full') && sets.includes('no-multiply')
+  return join(
+    SET_ORDER.filter(set => sets.includes(set)).map(set => (
+      <span className="together" key={set}>
+        <DashKey set={set} />
+        {both && set === 'full' ? 'with' : SET_PHRASES[set]}
+      </span>
+    )),
+    sets.length > 2 ? ', ' : ' and ',
+    ' and ',
+  )
+}
+
+function ChargesPart(props: {
+  readonly charges: Charges | undefined
+  readonly written: string
+  readonly slot: (part: ReactNode) => ReactNode
+}) {
+  const { charges, written, slot } = props
+  if (!charges) return <>operations charged {slot(written)}</>
+  const reading = readCharges(charges)
+  if (reading.kind === 'unit') return <>every operation charged {slot('1')}</>
+  if (reading.kind === 'operators')
+    return <>every operation charged {slot('1, moves, compares, jumps and calls 0')}</>
+  return (
+    <>
+      every operation charged {slot(`1, ${reading.prices.map(([name, price]) => `${name} ${price}`).join(', ')}`)}
+    </>
+  )
+}
+
+function Range({ name, range }: { readonly name: string; readonly range: SizeRange }) {
+  const reading = readRange(range)
+  const name_ = <i>{name}</i>
+  switch (reading.kind) {
+    case 'doubling':
+      return (
+        <>
+          {name_} = <SizeValue of={reading.from} /> to <SizeValue of={reading.to} />
+        </>
+      )
+    case 'stepping':
+      return (
+        <>
+          {name_} = <SizeValue of={reading.from} /> to <SizeValue of={reading.to} />
+          {reading.by !== 1 && ` by ${reading.by}`}
+        </>
+      )
+    case 'list':
+      return (
+        <>
+          {name_} ={' '}
+          {join(
+            reading.values.map(value => <SizeValue key={value} of={value} />),
+            ', ',
+          )}
+        </>
+      )
+    case 'many':
+      return (
+        <>
+          {reading.count} values of {name_} from <SizeValue of={reading.from} /> to <SizeValue of={reading.to} />
+        </>
+      )
+  }
+}
+
+function Sizes({ shape, setting }: { readonly shape: RoutineShape; readonly setting: Setting }) {
+  const [first] = shape.sizes
+  const parts = [
+    ...shape.sizes.map(name => {
+      const range = setting.sizes[name]
+      return range ? (
+        <Range key={name} name={name} range={range} />
+      ) : (
+        <Fragment key={name}>
+          <i>{name}</i> = <i>{first}</i>
+        </Fragment>
+      )
+    }),
+    ...Object.entries(setting.lets).map(([name, value]) => (
+      <Fragment key={`let ${name}`}>
+        <i>{name}</i> = {String(value)}
+      </Fragment>
+    )),
+  ]
+  return parts.length > 0 ? join(parts, ', ') : <>lets as declared</>
+}
+
+function Trials({ trials, seed }: { readonly trials: string; readonly seed: string }) {
+  return (
+    <>
+      {trials} {trials === '1' ? 'trial' : 'trials'}
+      {seed !== '1' && ` from seed ${seed}`}
+    </>
+  )
+}
