@@ -39,6 +39,6 @@ export function fileName(typed: string): string {
     .join('')
     .trim()
     .replace(/^\.+/, '')
-  if (kept === '' || kept === ENDING) return `draft${ENDING}`
+  if (kept === '' || `.${kept}` === ENDING) return `draft${ENDING}`
   return kept.endsWith(ENDING) ? kept : `${kept.replace(/\.txt$/, '')}${ENDING}`
 }

@@ -22,13 +22,13 @@ export const DAMAGED_KEY = 'tallyword.damaged'
 const VERSION = 1
 
 /**
- * What was found: nothing, what was kept, or a text that makes no sense; that one is set aside under `DAMAGED_KEY` first, and
- * `reason` says what is wrong with it. `closed` where the browser keeps nothing at all.
+ * What was found: nothing, what was kept, or a text that makes no sense; that one is set aside under `DAMAGED_KEY`
+ * where there is room, and `reason` says what is wrong with it. `closed` where the browser keeps nothing at all.
  */
 export type Found =
   | { readonly kind: 'nothing' }
   | { readonly kind: 'kept'; readonly kept: Kept }
-  | { readonly kind: 'damaged'; readonly reason: string }
+  | { readonly kind: 'damaged'; readonly reason: string; readonly text: string }
   | { readonly kind: 'closed' }
 
 export function findKept(drawer: Drawer): Found {
@@ -42,7 +42,7 @@ export function findKept(drawer: Drawer): Found {
   const read = readKept(text)
   if (typeof read !== 'string') return { kind: 'kept', kept: read }
   setAside(drawer, text)
-  return { kind: 'damaged', reason: read }
+  return { kind: 'damaged', reason: read, text }
 }
 
 /** Keeps it; false where the browser refuses. */
@@ -109,22 +109,36 @@ export function keepTheme(drawer: Drawer, choice: ThemeChoice): void {
 
 /** Texts set aside, oldest first. */
 export function damagedTexts(drawer: Drawer): readonly string[] {
+  let text: string | null
   try {
-    const text = drawer.getItem(DAMAGED_KEY)
-    if (text === null) return []
-    const value: unknown = JSON.parse(text)
-    return Array.isArray(value) && value.every(each => typeof each === 'string') ? value : [text]
+    text = drawer.getItem(DAMAGED_KEY)
   } catch {
     return []
   }
+  if (text === null) return []
+  try {
+    const value: unknown = JSON.parse(text)
+    if (Array.isArray(value) && value.every(each => typeof each === 'string')) return value
+  } catch {
+    // Damaged in its turn: one text more to give back.
+  }
+  return [text]
 }
 
 function setAside(drawer: Drawer, text: string): void {
   const texts = damagedTexts(drawer)
   if (texts.includes(text)) return
-  drawer.setItem(DAMAGED_KEY, JSON.stringify([...texts, text]))
+  try {
+    drawer.setItem(DAMAGED_KEY, JSON.stringify([...texts, text]))
+  } catch {
+    // No room for a copy: the page still has the text at hand, and says so.
+  }
 }
 
 export function discardDamaged(drawer: Drawer): void {
-  drawer.removeItem(DAMAGED_KEY)
+  try {
+    drawer.removeItem(DAMAGED_KEY)
+  } catch {
+    // It comes up again at the next visit.
+  }
 }

@@ -39,7 +39,8 @@ export function openKept(world: World): Opened {
   const { drawer } = world
   if (!drawer) return { kept: undefined, theme: 'system', notices: () => [NOT_KEPT] }
   const found = findKept(drawer)
-  const texts = damagedTexts(drawer)
+  const aside = damagedTexts(drawer)
+  const texts = found.kind === 'damaged' && !aside.includes(found.text) ? [...aside, found.text] : aside
   const why = found.kind === 'damaged' ? found.reason : 'it could not be read'
   return {
     kept: found.kind === 'kept' ? found.kept : undefined,

@@ -7,8 +7,11 @@ import type { InstructionSetName } from '../../machine/machine'
 export const MARKERS = ['disc', 'square', 'triangle', 'diamond', 'cap', 'pentagon', 'bowtie', 'star'] as const
 export type Marker = (typeof MARKERS)[number]
 
-/** CSS custom properties of the page's palette, in the order of the setting's widths. */
-export const WIDTH_COLOURS = ['sand', 'tide', 'deep', 'moss', 'rose', 'slate'] as const
+/**
+ * CSS custom properties of the page's palette, in the order of the setting's widths. Under simulated colour blindness
+ * (Machado, Oliveira, Fernandes 2009) no two come closer than 18 (CIE76), nor to the ink or to what is broken.
+ */
+export const WIDTH_COLOURS = ['sand', 'tide', 'deep', 'fourth', 'fifth', 'sixth'] as const
 export type WidthColour = (typeof WIDTH_COLOURS)[number]
 
 /** The hues as drawn, for exports that stand without the page's style sheet. */
@@ -17,17 +20,17 @@ export const COLOUR_VALUES = {
     sand: '#96610a',
     tide: '#00758a',
     deep: '#4a3ba3',
-    moss: '#3f6f1f',
-    rose: '#a23a86',
-    slate: '#55585c',
+    fourth: '#9112e8',
+    fifth: '#4a1a5e',
+    sixth: '#4c1c00',
   },
   dark: {
     sand: '#dda548',
     tide: '#49bcca',
     deep: '#a99bff',
-    moss: '#9bc46a',
-    rose: '#ee9bd2',
-    slate: '#b9bdc2',
+    fourth: '#ee4d92',
+    fifth: '#a9e82c',
+    sixth: '#627af0',
   },
 } as const satisfies Record<'light' | 'dark', Record<WidthColour, string>>
 

@@ -54,6 +54,8 @@ export interface SettingRead {
 
 /** More trials than this at each point are taken for a slip of the pen. */
 export const MOST_TRIALS = 10_000
+/** More points than this are more than the page could show. */
+export const MOST_POINTS = 100_000
 const MOST_SEED = 2 ** 31 - 1
 
 /** Reads a setting for a routine of the given shape. */
@@ -87,6 +89,16 @@ export function readSetting(text: SettingText, shape: RoutineShape): SettingRead
     const read = take(`let ${name}`, parseLets(`${name} = ${own}`))
     if (read) Object.assign(lets, read.lets)
   }
+  const points = [...Object.values(sizes)].reduce(
+    (product, { values }) => product * values.length,
+    (widths?.length ?? 1) * text.sets.length,
+  )
+  if (points > MOST_POINTS)
+    problems.push({
+      field: `size ${shape.sizes[0] ?? ''}`,
+      problem: `the grid would have ${points} points`,
+      remedy: `take fewer sizes: up to ${MOST_POINTS} points are run at once`,
+    })
   const trials = whole('trials', text.trials, 1, MOST_TRIALS)
   const seed = whole('seed', text.seed, 0, MOST_SEED)
   if (problems.length > 0 || !widths || !charges || trials === undefined || seed === undefined) return { problems }
