@@ -1,5 +1,6 @@
 import { balanceLines, type Item, type Step, withRoles } from './balance'
 import { readDeclaration } from './declaration'
+import { opensForeignDeclaration, opensForeignRoutine } from './foreign'
 import { type Line, lineSpan, type Mark, markSpan, type Reading } from './lines'
 import { editsFix, type Notes, replaceFix } from './notes'
 import type { LineForm } from './parser'
@@ -17,7 +18,7 @@ const UNNAMED = 'draft'
 
 /** Puts the lines of a text together to routines. What is wrong is said to `notes`. */
 export function assembleRoutines(reading: Reading, notes: Notes): RoutineTree[] {
-  const items = withRoles(reading.lines)
+  const items = withRoles(correctHead(reading.lines, notes))
   const reader = new LineReader(notes)
   const routines: RoutineTree[] = []
   let from = 0
@@ -43,6 +44,22 @@ function shareMargins(routines: readonly RoutineTree[], { comments, blanks }: Re
       blanks: blanks.filter(here),
     }
   })
+}
+
+/** The lines, the first of them as `routine NAME` where it says so in other words. */
+function correctHead(lines: readonly Line[], notes: Notes): readonly Line[] {
+  const [first, ...rest] = lines
+  const mark = first?.tokens[0]
+  if (!first || !mark || !opensForeignRoutine(first.tokens)) return lines
+  const span = markSpan(mark)
+  notes.correct(
+    span,
+    `\`${mark.image}\` is no word of the notation.`,
+    'Write `routine`.',
+    replaceFix('Write `routine`', span, 'routine'),
+  )
+  const head = { ...mark, tokenType: T.Routine, tokenTypeIdx: T.Routine.tokenTypeIdx! }
+  return [{ ...first, tokens: [head, ...first.tokens.slice(1)] }, ...rest]
 }
 
 function isHeader(role: Role): boolean {
@@ -302,7 +319,12 @@ class Assembly {
   private takeLabels(line: Line, role: Role): number {
     const count = labelTokens(line)
     if (count === 0) return 0
-    if (role.kind === 'declaration' && this.phase === 'declarations' && line.strays.length === 0) return 0
+    const first = line.tokens[0]!
+    const declaring = this.phase === 'declarations' && this.frames.length === 0
+    if (declaring && count < line.tokens.length && T.DECLARATION_WORDS.has(first.tokenType)) {
+      this.takeColon(line, first)
+      return line.tokens.length
+    }
     if (role.kind === 'begin' || line.strays.length > 0) return count
     if (this.frames.length === 0) this.requireBody(line)
     for (let at = 0; at < count; at += 2) {
@@ -310,6 +332,18 @@ class Assembly {
       this.add({ kind: 'label', name, span: joinSpans(name.span, markSpan(line.tokens[at + 1]!)) })
     }
     return count
+  }
+
+  /** `in: a[n]`: a declaration whose word was taken for a label. */
+  private takeColon(line: Line, first: Mark): void {
+    const span = markSpan(line.tokens[1]!)
+    this.notes.correct(
+      span,
+      `No \`:\` follows \`${first.image}\`; a name with \`:\` is a label.`,
+      'Delete `:`.',
+      replaceFix('Delete `:`', span, ''),
+    )
+    this.takeDeclaration({ ...line, tokens: [first, ...line.tokens.slice(2)] }, 0)
   }
 
   private add(statement: Statement): void {
@@ -366,7 +400,7 @@ class Assembly {
         : undefined
     this.notes.correct(
       this.spanFrom(line, from),
-      `A declaration stands ${frame && !this.begin ? `inside a ${frame.kind}` : 'after `begin`'}: \`${line.tokens[from]!.image}\`.`,
+      `A declaration stands ${frame && !this.begin ? `inside the \`${frame.kind}\` of line ${frame.span.line}` : 'after `begin`'}: \`${line.tokens[from]!.image}\`.`,
       'Move it above the `begin` line.',
       edits && editsFix('Move it above `begin`', edits),
     )
@@ -375,6 +409,11 @@ class Assembly {
   private takeInstruction(line: Line, from: number): void {
     const span = this.spanFrom(line, from)
     if (this.phase === 'declarations' && this.frames.length === 0) {
+      if (opensForeignDeclaration(line.tokens.slice(from)) || line.strays.length > 0) {
+        this.reader.readInstruction(line, from)
+        this.notes.lost = false
+        return
+      }
       this.requireBody(line)
       if (this.phase === 'declarations') return
     }
@@ -449,7 +488,7 @@ class Assembly {
     if (outer)
       this.notes.correct(
         span,
-        `A procedure stands inside ${outer.kind === 'procedure' ? 'another one' : `a \`${outer.kind}\``}.`,
+        `A procedure stands inside the \`${outer.kind}\` of line ${outer.span.line}.`,
         'Move it to the declarations, before `begin`.',
       )
     const form = this.reader.readInstruction(line, from)

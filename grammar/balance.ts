@@ -161,7 +161,9 @@ class Balance {
     this.notes.correct(
       { ...lineSpan(line) },
       `This \`${form}\` has no ${word}${last ? '' : ' of its own'}.`,
-      form === 'repeat' ? 'Close it with `until C`.' : 'Close it with `end` on a line of its own.',
+      form === 'repeat'
+        ? 'Close it with `until C`.'
+        : `Close it with \`end\` on a line of its own${form === 'routine' && this.items.some(opensInner) ? '; or close the form inside it that lacks its own' : ''}.`,
       form === 'repeat' ? undefined : editsFix('Insert `end`', [{ start: at, end: at, text }]),
     )
   }
@@ -234,6 +236,10 @@ class Balance {
     else if (role.kind === 'close') this.skipping--
     return true
   }
+}
+
+function opensInner({ role }: Item): boolean {
+  return role.kind === 'open' && role.form !== 'routine'
 }
 
 /** The lines with their roles. */

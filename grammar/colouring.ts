@@ -31,32 +31,30 @@ export interface Token {
 export function tokenizeText(text: string): Token[] {
   const { lines, comments } = readLines(text)
   const tokens: Token[] = []
-  let comment = 0
+  const asides = readAsides(lines, comments)
+  let aside = 0
   for (const line of lines) {
     const labels = labelTokens(line)
     const declares = isDeclaration(line.tokens)
-    let stray = 0
     for (let at = 0; at < line.tokens.length; at++) {
       const mark = line.tokens[at]!
       const start = mark.startOffset
-      for (; (comments[comment]?.start ?? start) < start; comment++) tokens.push(commentToken(comments[comment]!))
-      for (; (line.strays[stray]?.span.start ?? start) < start; stray++) tokens.push(strayToken(line, stray))
+      for (; (asides[aside]?.start ?? start) < start; aside++) tokens.push(asides[aside]!)
       const kind = kindOf(line, at, labels, declares)
       if (kind) tokens.push({ start, end: start + mark.image.length, kind })
     }
-    for (; stray < line.strays.length; stray++) tokens.push(strayToken(line, stray))
   }
-  for (; comment < comments.length; comment++) tokens.push(commentToken(comments[comment]!))
+  for (; aside < asides.length; aside++) tokens.push(asides[aside]!)
   return tokens
 }
 
-function commentToken({ start, end }: { readonly start: number; readonly end: number }): Token {
-  return { start, end, kind: 'comment' }
-}
-
-function strayToken(line: Line, at: number): Token {
-  const { start, end } = line.strays[at]!.span
-  return { start, end, kind: 'unknown' }
+/** What stands between the tokens of the notation: comments and strays, in order. */
+function readAsides(lines: readonly Line[], comments: readonly { start: number; end: number }[]): Token[] {
+  const asides: Token[] = comments.map(({ start, end }) => ({ start, end, kind: 'comment' }))
+  const before = asides.length
+  for (const { strays } of lines)
+    for (const { span } of strays) asides.push({ start: span.start, end: span.end, kind: 'unknown' })
+  return asides.length === before ? asides : asides.sort((a, b) => a.start - b.start)
 }
 
 const KINDS = new Map<unknown, TokenKind | undefined>([

@@ -74,6 +74,11 @@ function readClaimOperator(mark: Mark, notes: Notes): '<=' | '=' {
 
 function readFix(form: LineForm & { kind: 'fix' }, span: Span, notes: Notes): Declaration | undefined {
   const name = nameOf(form.name)
+  const second = form.values.find(value => value.kind === 'binary' && value.mark.tokenType === T.Equal)
+  if (second) {
+    notes.refuse(second.span, 'A `fix` line declares one constant.', 'Write a `fix` line for each.')
+    return undefined
+  }
   const values = form.values.map(value => readExact(value, notes))
   const [value] = values
   if (!value) return undefined

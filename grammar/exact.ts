@@ -238,13 +238,26 @@ function readBinary(phrase: Phrase & { kind: 'binary' }, notes: Notes): Exact {
       `Write \`${text}\`.`,
       replaceFix(`Write \`${text}\``, span, text),
     )
-  } else
+  } else {
+    const text = lowBits(phrase, notes)
     notes.refuse(
       markSpan(mark),
       `Exact expressions work on numbers, not on bits: they have no \`${mark.image}\`, only \`popcount\`.`,
-      BITS_REMEDY,
+      text ? `Write \`${text}\`.` : BITS_REMEDY,
+      text ? replaceFix(`Write \`${text}\``, span, text) : undefined,
     )
+  }
   return blank(span)
+}
+
+/** What `x & m` is in numbers, where m is a literal of low bits alone. */
+function lowBits(phrase: Phrase & { kind: 'binary' }, notes: Notes): string | undefined {
+  if (phrase.mark.tokenType !== T.Ampersand || phrase.right.kind !== 'number') return undefined
+  const mask = readExactNumeral(phrase.right.mark, notes)
+  if (mask.kind !== 'number' || mask.denominator !== 1n || (mask.numerator & (mask.numerator + 1n)) !== 0n)
+    return undefined
+  const left = notes.read(phrase.left.span)
+  return `${phrase.left.kind === 'binary' && !left.startsWith('(') ? `(${left})` : left} mod ${mask.numerator + 1n}`
 }
 
 function readOperator(phrase: Phrase & { kind: 'binary' }, notes: Notes): ExactOperator | undefined {

@@ -65,6 +65,8 @@ const STARTERS: ReadonlySet<unknown> = new Set([
   T.Procedure,
   T.Assert,
 ])
+/** Words with which other languages close a form. */
+export const FOREIGN_ENDS = /^(?:end_?(?:if|while|for|do|loop|procedure|proc|function|routine|repeat)|fi|od|wend)$/i
 const OPENING: ReadonlySet<unknown> = new Set([T.LeftParen, T.LeftSquare, T.LeftCeil, T.LeftFloor])
 const CLOSING: ReadonlySet<unknown> = new Set([T.RightParen, T.RightSquare, T.RightCeil, T.RightFloor])
 /** Besides infix operators: what a line may end in and go on. */
@@ -85,6 +87,7 @@ function startsAnew(tokens: readonly Mark[], from: number): boolean {
   const first = tokens[from]!.tokenType
   if (STARTERS.has(first)) return true
   const second = tokens[from + 1]?.tokenType
+  if (first === T.Name && (!second || second === T.Newline) && FOREIGN_ENDS.test(tokens[from]!.image)) return true
   if (second === T.Colon && T.isOf(first, T.Name)) return true
   if (
     T.DECLARATION_WORDS.has(first) &&
@@ -133,20 +136,13 @@ export function readLines(text: string): Reading {
   const close = (): void => {
     const first = current[0]
     const last = current[current.length - 1]
-    const odd = found[0]
-    if (first && last) {
-      lines.push({
-        tokens: current,
-        strays: found,
-        line: first.startLine,
-        column: first.startColumn,
-        start: first.startOffset,
-        end: last.startOffset + last.image.length,
-      })
-    } else if (odd) {
-      const end = found[found.length - 1]!.span.end
-      const { start, line, column } = odd.span
-      lines.push({ tokens: [], strays: found, line, column, start, end })
+    const firstStray = found[0]?.span
+    const lastStray = found[found.length - 1]?.span
+    const opening = first ? markSpan(first) : firstStray
+    if (opening) {
+      const at = firstStray && firstStray.start < opening.start ? firstStray : opening
+      const end = Math.max(last ? markSpan(last).end : 0, lastStray?.end ?? 0)
+      lines.push({ tokens: current, strays: found, line: at.line, column: at.column, start: at.start, end })
     }
     current = []
     found = []

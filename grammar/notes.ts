@@ -4,6 +4,9 @@ import type { Span } from './span'
 /** The most diagnostics that one text is given; past it a last one says that there are more. */
 const MOST_NOTES = 200
 
+/** A remedy as edits. */
+export type Fix = NonNullable<Diagnostic['fix']>
+
 /** What is said of a text while it is read. */
 export class Notes {
   private readonly kept: Diagnostic[] = []
@@ -15,12 +18,12 @@ export class Notes {
   constructor(readonly text: string) {}
 
   /** Says what is wrong where the meaning is plain all the same: reading goes on as the remedy has it. */
-  correct(span: Span, message: string, remedy: string, fix?: Diagnostic['fix']): void {
+  correct(span: Span, message: string, remedy: string, fix?: Fix): void {
     this.add({ severity: 'error', span, message, remedy, ...(fix && { fix }) })
   }
 
   /** Says what is wrong where nothing can be made of the line. */
-  refuse(span: Span, message: string, remedy: string, fix?: Diagnostic['fix']): void {
+  refuse(span: Span, message: string, remedy: string, fix?: Fix): void {
     this.lost = true
     this.correct(span, message, remedy, fix)
   }
@@ -53,11 +56,11 @@ export class Notes {
 }
 
 /** A fix that puts `text` in place of what stands under `span`. */
-export function replaceFix(label: string, span: { start: number; end: number }, text: string): Diagnostic['fix'] {
+export function replaceFix(label: string, span: { start: number; end: number }, text: string): Fix {
   return { label, edits: [{ start: span.start, end: span.end, text }] }
 }
 
 /** A fix of several edits, put in order. */
-export function editsFix(label: string, edits: readonly Edit[]): Diagnostic['fix'] {
+export function editsFix(label: string, edits: readonly Edit[]): Fix {
   return { label, edits: [...edits].sort((a, b) => a.start - b.start) }
 }

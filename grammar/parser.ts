@@ -287,7 +287,7 @@ export class LineParser extends EmbeddedActionsParser {
   readonly itemsLine = this.RULE('itemsLine', (): LineForm => {
     const items: ItemForm[] = []
     const word = this.CONSUME(T.Name) as Mark
-    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => items.push(this.SUBRULE(this.item)) })
+    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => items.push(this.SUBRULE(this.item)), ERR_MSG: 'a name' })
     return { kind: 'items', word, items }
   })
 
@@ -353,7 +353,7 @@ export class LineParser extends EmbeddedActionsParser {
       this.CONSUME(T.RightSquare)
     })
     const equal = this.SUBRULE(this.equal)
-    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE2(this.phrase)) })
+    this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => values.push(this.SUBRULE2(this.phrase)), ERR_MSG: 'a value' })
     return { kind: 'fix', name, ...(length && { length }), ...(range && { range }), equal, values }
   })
 
@@ -435,7 +435,11 @@ export class LineParser extends EmbeddedActionsParser {
     this.CONSUME(T.RightParen)
     this.OPTION(() => {
       this.CONSUME(T.Gives)
-      this.AT_LEAST_ONE_SEP({ SEP: T.Comma, DEF: () => results.push(this.CONSUME3(T.Name) as Mark) })
+      this.AT_LEAST_ONE_SEP({
+        SEP: T.Comma,
+        DEF: () => results.push(this.CONSUME3(T.Name) as Mark),
+        ERR_MSG: 'a name',
+      })
     })
     return { kind: 'procedure', name, parameters, results }
   })

@@ -98,6 +98,10 @@ const LOOKALIKES: Readonly<Record<string, string>> = {
   '⇐': '<-',
   '↚': '<-',
   '∞': '2^w - 1',
+  '∑': 'sum',
+  '∀': 'all',
+  '∃': 'any',
+  '∈': 'in',
   '²': '^2',
   '³': '^3',
   '\\': 'mod',
@@ -192,21 +196,45 @@ export class LineReader {
     return true
   }
 
+  /** A point that stands neither between digits nor beside another one. */
+  private refusePoint({ span }: Stray): void {
+    const { text } = this.notes
+    const [before, after] = [isDigit(text[span.start - 1]), isDigit(text[span.end])]
+    this.notes.refuse(
+      span,
+      'A lone `.` means nothing.',
+      after && !before
+        ? 'Write a digit before the decimal point as well.'
+        : before && !after
+          ? 'Delete it, or write a digit after it.'
+          : 'Write `..` for a range; delete it elsewhere.',
+      after && !before
+        ? replaceFix('Write `0.`', span, '0.')
+        : before && !after
+          ? replaceFix('Delete `.`', span, '')
+          : undefined,
+    )
+  }
+
   private refuseStray(stray: Stray): void {
+    if (stray.text === '.') {
+      this.refusePoint(stray)
+      return
+    }
     const meant = Object.hasOwn(LOOKALIKES, stray.text) ? LOOKALIKES[stray.text] : undefined
     const code = stray.text.codePointAt(0)!
     const shown = code < 32 || code === 127 ? `the character with code ${code}` : `\`${stray.text}\``
     this.notes.refuse(
       stray.span,
-      stray.text === '.' ? 'A lone `.` means nothing.' : `The notation has no use for ${shown}.`,
-      meant
-        ? `Write \`${meant}\`.`
-        : stray.text === '.'
-          ? 'Write `..` for a range, and a digit on each side of a decimal point.'
-          : 'Delete it, or move it into a comment: a comment begins with `#`.',
+      `The notation has no use for ${shown}.`,
+      meant ? `Write \`${meant}\`.` : 'Delete it, or move it into a comment: a comment begins with `#`.',
       meant ? replaceFix(`Write \`${meant}\``, stray.span, meant) : undefined,
     )
   }
+}
+
+function isDigit(character: string | undefined): boolean {
+  return character !== undefined && character >= '0' && character <= '9'
 }
 
 function isOpening(type: TokenType): boolean {

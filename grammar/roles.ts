@@ -1,5 +1,5 @@
 import type { TokenType } from 'chevrotain'
-import type { Line, Mark } from './lines'
+import { FOREIGN_ENDS, type Line, type Mark } from './lines'
 import * as T from './tokens'
 
 /** The forms that reach from an opening line to a closing one. */
@@ -16,8 +16,6 @@ export type Role =
   | { readonly kind: 'declaration' }
   | { readonly kind: 'instruction' }
 
-/** Words with which other languages close a form. */
-const CLOSERS = /^(?:end_?(?:if|while|for|do|loop|procedure|proc|function|routine|repeat)|fi|od|wend)$/i
 /** Words with which other languages say `else if`. */
 const MIDDLES = /^(?:elif|elsif|elseif)$/i
 
@@ -60,6 +58,9 @@ export function roleOf(line: Line): Role {
   const first = line.tokens[at]
   if (!first) return { kind: 'instruction' }
   const type = first.tokenType
+  const second = line.tokens[at + 1]?.tokenType
+  // `end <- 5`: a variable that cannot be called so, no form.
+  if (second && type !== T.Until && T.isOf(second, T.Assign) && !isName(first)) return { kind: 'instruction' }
   if (type === T.If) return isOneLine(line, at) ? { kind: 'instruction' } : { kind: 'open', form: 'if' }
   const form = FORMS.get(type)
   if (form) return { kind: 'open', form }
@@ -73,7 +74,7 @@ export function roleOf(line: Line): Role {
     if (line.tokens[at + 1]?.tokenType === T.Else) return { kind: 'middle' }
     if (alone) return { kind: 'close', until: false }
   }
-  if (type === T.Name && alone && CLOSERS.test(first.image)) return { kind: 'close', until: false }
+  if (type === T.Name && alone && FOREIGN_ENDS.test(first.image)) return { kind: 'close', until: false }
   if (type === T.Name && !alone && MIDDLES.test(first.image)) return { kind: 'middle' }
   return { kind: 'instruction' }
 }

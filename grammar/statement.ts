@@ -1,4 +1,5 @@
 import { readExactCondition } from './exact'
+import { foreignRemedy, smallWord } from './foreign'
 import { type Mark, markSpan } from './lines'
 import { type Notes, replaceFix } from './notes'
 import type { LineForm } from './parser'
@@ -169,36 +170,27 @@ function readAlone(places: readonly Phrase[], span: Span, notes: Notes): Stateme
   return undefined
 }
 
-const ALONE: Readonly<Record<string, string>> = {
-  stop: 'halt',
-  exit: 'halt',
-  quit: 'halt',
-  ret: 'return',
-  loop: 'repeat',
-}
-
 function refuseName(phrase: Phrase & { kind: 'name' }, notes: Notes): void {
   const { span, mark } = phrase
   const name = mark.image
-  const meant = Object.hasOwn(ALONE, name) ? ALONE[name] : undefined
-  if (meant)
+  const small = smallWord(mark)
+  const known = small ? ([`Write \`${small}\`.`, small] as const) : foreignRemedy(mark)
+  if (known) {
+    const [remedy, text] = known
     notes.refuse(
       span,
-      `\`${name}\` is no word of the notation.`,
-      `Write \`${meant}\`.`,
-      replaceFix(`Write \`${meant}\``, span, meant),
+      small
+        ? `\`${name}\` is written with capitals; the words of the notation are small.`
+        : `\`${name}\` is no word of the notation.`,
+      remedy,
+      text ? replaceFix(`Write \`${text}\``, span, text) : undefined,
     )
-  else if (name === 'break' || name === 'continue')
-    notes.refuse(
-      span,
-      `\`${name}\` is no word of the notation.`,
-      `Put a label ${name === 'break' ? 'after' : 'before the end of'} the loop, and write \`goto\` with its name.`,
-    )
-  else
-    notes.refuse(
-      span,
-      `\`${name}\` alone is no instruction.`,
-      `Write \`${name}:\` for a label, \`${name}()\` for a call, or \`${name} <- E\` to set it.`,
-      { label: `Make it the label \`${name}:\``, edits: [{ start: span.end, end: span.end, text: ':' }] },
-    )
+    return
+  }
+  notes.refuse(
+    span,
+    `\`${name}\` alone is no instruction.`,
+    `Write \`${name}:\` for a label, \`${name}()\` for a call, or \`${name} <- E\` to set it.`,
+    { label: `Make it the label \`${name}:\``, edits: [{ start: span.end, end: span.end, text: ':' }] },
+  )
 }

@@ -370,8 +370,9 @@ export function readCondition(phrase: Phrase, notes: Notes): WordCondition {
     return blankCondition(span)
   }
   const before = notes.lost
+  notes.lost = false
   readWord(phrase, notes)
-  if (notes.lost === before) {
+  if (!notes.lost) {
     const text = `${notes.read(span)} != 0`
     notes.refuse(
       span,
@@ -380,6 +381,7 @@ export function readCondition(phrase: Phrase, notes: Notes): WordCondition {
       editsFix(`Write \`${text}\``, [{ start: span.end, end: span.end, text: ' != 0' }]),
     )
   }
+  notes.lost ||= before
   return blankCondition(span)
 }
 
@@ -394,6 +396,12 @@ export function correctBang(phrase: Phrase & { kind: 'prefix' }, notes: Notes): 
 /** Says that `a < b < c` is two comparisons. */
 export function refuseChain(phrase: Phrase & { kind: 'binary' }, notes: Notes): boolean {
   const { left } = phrase
+  if (
+    left.kind === 'binary' &&
+    left.mark.tokenType === T.WrongGreaterEqual &&
+    refuseImplication(phrase, left, notes)
+  )
+    return true
   if (left.kind !== 'binary' || !isComparison(left.mark) || left.span.end !== left.right.span.end) return false
   const middle = notes.read(left.right.span)
   notes.refuse(
@@ -401,6 +409,24 @@ export function refuseChain(phrase: Phrase & { kind: 'binary' }, notes: Notes): 
     'A comparison has two sides.',
     `Write two and join them: \`${notes.read(left.span)} and ${middle} ${phrase.mark.image} ${notes.read(phrase.right.span)}\`.`,
     editsFix('Write two comparisons', [{ start: left.span.end, end: left.span.end, text: ` and ${middle}` }]),
+  )
+  return true
+}
+
+/** Says that `A => B`, which reads as `(A => b) = c`, is written in other words. */
+function refuseImplication(
+  phrase: Phrase & { kind: 'binary' },
+  left: Phrase & { kind: 'binary' },
+  notes: Notes,
+): boolean {
+  if (left.left.kind !== 'binary' || !isComparison(left.left.mark)) return false
+  const after = notes.text.slice(left.right.span.start, phrase.span.end)
+  const text = `not ${notes.read(left.left.span)} or ${after}`
+  notes.refuse(
+    markSpan(left.mark),
+    '`=>` joins no conditions.',
+    `Write \`${text}\`.`,
+    replaceFix(`Write \`${text}\``, phrase.span, text),
   )
   return true
 }

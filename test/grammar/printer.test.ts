@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
 import {
-  formatText,
+
   parseCondition,
   parseExact,
   parseText,
