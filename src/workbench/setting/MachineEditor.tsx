@@ -15,10 +15,10 @@ interface Chip {
 }
 
 const SET_LABELS: Readonly<Record<InstructionSetName, readonly [string, string]>> = {
-  full: ['with multiplication', 'add, logic, shift, multiply'],
-  'no-multiply': ['without', 'add, logic, shift'],
-  'add-only': ['by addition alone', 'add'],
-  extended: ['with every class', 'also divide, bitscan'],
+  full: ['with multiplication', 'add, logic, shift and multiply on'],
+  'no-multiply': ['without multiplication', 'add, logic and shift on'],
+  'add-only': ['by addition alone', 'add on'],
+  extended: ['with every class', 'divide and bitscan on as well'],
 }
 
 /** Word widths and instruction sets. */
@@ -28,7 +28,7 @@ export function MachineEditor(props: EditorProps) {
     <>
       <WidthRow {...props} />
       <Row label="Instructions">
-        <div className="options">
+        <div className="options stacked">
           {SET_ORDER.map((set, place) => (
             <label key={set} className="option">
               <input

@@ -5,14 +5,15 @@ import type { SettingText } from './setting-text'
 export const DEMO_DRAFT: Draft = {
   file: 'fennick.tally',
   routine: undefined,
-  text: `# Fennick estuary: readings packed a word each, water level in the high bits,
-# then minute of day and gauge number. Sorted by digits of k bits, lowest first.
+  text: `# Fennick estuary. A reading is one word: level,
+# minute of day, gauge, from the high bits down.
+# Sorted by digits of k bits, the lowest first.
 routine bylevel
   inout a[n]
   let   k = 8
   work  b[n], c[2^k]
   fix   r = 2^k - 1
-  need  w mod (2*k) = 0   # an even number of passes ends in a
+  need  w mod (2*k) = 0   # ends in a, not in b
   claim time  = w/k * (20*n + 10*2^k + 17) + 4
   claim time  <= 150*n + 2^15
   claim space <= n + 2^k + 10
@@ -49,13 +50,14 @@ begin
   end
 end
 
-# The same readings brought to the estuary's datum: each level times 4/5, in fixed point.
+# Readings brought to the estuary's datum: times
+# 4/5, in fixed point. This needs a multiplier.
 routine todatum
   inout a[n]
   fix   m = floor(2^w * 4 / 5)
   claim time  <= 6*n + 4
   claim space <= 4
-  check all i in 0 .. n-1 : a[i] = floor(old(a)[i] * m / 2^w)
+  check all i in 0..n-1 : a[i] = floor(old(a)[i] * m / 2^w)
 begin
   for i from 0 to n - 1
     hi, lo <- a[i] * m

@@ -1,12 +1,12 @@
-import { weighTally } from '../../machine'
+import { type Count, weighTally } from '../../machine'
 import type { Verdict } from '../../sweep/result'
 import type { Reading, SweepRecord } from './record'
 
 /** What stands beside a line of the draft. */
 export type MarginCell =
   /** `time` is the line's operations at their charges; `share` of the routine's time, from 0 to 1. */
-  | { readonly line: number; readonly kind: 'time'; readonly time: number; readonly share: number }
-  | { readonly line: number; readonly kind: 'total'; readonly time: number }
+  | { readonly line: number; readonly kind: 'time'; readonly time: Count; readonly share: number }
+  | { readonly line: number; readonly kind: 'total'; readonly time: Count }
   /** Of a claim, check or need over all points so far. */
   | { readonly line: number; readonly kind: 'verdict'; readonly word: VerdictWord }
 
@@ -20,7 +20,7 @@ export function marginCells(record: SweepRecord, reading: Reading | undefined): 
   if (tally) {
     const { time, byLine } = weighTally(tally, record.setting.charges)
     for (const { line, time: own } of byLine)
-      cells.set(line, { line, kind: 'time', time: own, share: time > 0 ? own / time : 0 })
+      cells.set(line, { line, kind: 'time', time: own, share: time > 0 ? Number(own) / Number(time) : 0 })
     const { line } = record.program.routine.tree.span
     cells.set(line, { line, kind: 'total', time })
   }
