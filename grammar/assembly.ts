@@ -1,17 +1,17 @@
 import { balanceLines, type Item, type Step, withRoles } from './balance'
 import { readDeclaration } from './declaration'
+import { deleteLineFix, editsFix, lineEnd, lineStart, mergeEdits, nextLine, replaceFix } from './edits'
 import { opensForeignDeclaration, opensForeignRoutine } from './foreign'
-import { type Line, lineSpan, type Mark, markSpan, type Reading } from './lines'
-import { editsFix, type Notes, replaceFix } from './notes'
-import type { LineForm } from './parser'
-import type { Phrase } from './phrase'
+import { Forms, type Frame } from './forms'
+import { type Line, lineSpan, type Mark, markSpan, type Reading, restSpan } from './lines'
+import type { Notes } from './notes'
 import { LineReader } from './reader'
 import { labelTokens, type Role } from './roles'
 import { joinSpans, type Span } from './span'
-import { ELSEWHERE, readStatement } from './statement'
+import { readStatement } from './statement'
 import * as T from './tokens'
-import type { Branch, Declaration, Name, ProcedureTree, RoutineTree, Statement, WordCondition } from './tree'
-import { blankCondition, nameOf, readCondition, readWord, WORD_NAMES } from './word'
+import type { Declaration, Name, ProcedureTree, RoutineTree, Statement, WordCondition } from './tree'
+import { blankCondition, nameOf } from './word'
 
 /** The name of a routine whose text does not give it one. */
 const UNNAMED = 'draft'
@@ -66,32 +66,6 @@ function isHeader(role: Role): boolean {
   return role.kind === 'open' && role.form === 'routine'
 }
 
-/** A form whose last line is still to come. */
-type Frame =
-  | ({
-      readonly kind: 'procedure'
-      readonly form?: LineForm & { kind: 'procedure' }
-      readonly nested: boolean
-    } & Open)
-  | ({ readonly kind: 'while'; readonly condition: WordCondition } & Open)
-  | ({ readonly kind: 'repeat' } & Open)
-  | ({ readonly kind: 'for'; readonly form?: LineForm & { kind: 'for' }; readonly parts?: ForParts } & Open)
-  | ({
-      readonly kind: 'if'
-      readonly branches: Branch[]
-      condition: WordCondition
-      branch: Span
-      otherwise?: Span
-    } & Open)
-
-interface Open {
-  readonly span: Span
-  body: Statement[]
-}
-
-type ForParts = Pick<Statement & { kind: 'for' }, 'variable' | 'from' | 'to' | 'down'> &
-  Partial<Pick<Statement & { kind: 'for' }, 'step'>>
-
 /** Builds the routine that the lines from one `routine` to the next make up. */
 class Assembly {
   private readonly notes: Notes
@@ -101,13 +75,17 @@ class Assembly {
   private begin: Span | undefined
   private declarations: (Declaration | ProcedureTree)[] = []
   private body: Statement[] = []
-  private frames: Frame[] = []
+  private readonly forms: Forms
   private readonly steps: readonly Step[]
   private readonly endMissing: boolean
   private at = 0
   /** The line taken last: what is missing goes below it. */
   private last: Line | undefined
   private outside = false
+  /** Set once it has been said that `begin` is missing or comes too late. */
+  private beginReported = false
+  /** Place of the last `begin` line among the steps. */
+  private readonly lastBegin: number
 
   constructor(
     items: readonly Item[],
@@ -115,10 +93,12 @@ class Assembly {
     private readonly routines: RoutineTree[],
   ) {
     this.notes = reader.notes
+    this.forms = new Forms(reader)
     const headed = items[0] !== undefined && isHeader(items[0].role)
     const balance = balanceLines(items, headed, this.notes)
     this.steps = balance.steps
     this.endMissing = balance.endMissing
+    this.lastBegin = this.steps.findLastIndex(step => step.kind === 'line' && step.role.kind === 'begin')
   }
 
   run(): void {
@@ -144,10 +124,11 @@ class Assembly {
     if (from === line.tokens.length && from > 0) return
     switch (role.kind) {
       case 'open':
-        this.openForm(line, from, role.form as Frame['kind'])
+        if (role.form !== 'procedure' && !this.forms.innermost()) this.requireBody(line)
+        this.forms.open(line, from, role.form as Frame['kind'])
         break
       case 'middle':
-        this.takeElse(line, from)
+        this.forms.turn(line, from)
         break
       case 'close':
         this.takeEnd(line, from, role.until)
@@ -182,19 +163,20 @@ class Assembly {
     this.start = { ...span, end: span.start }
     this.name = { text: UNNAMED, span: this.start }
     const begins = this.expectsBegin()
-    const margin = line.start - (line.column - 1)
+    const ahead = this.linesAhead()
+    const margin = lineStart(line)
     const edits = [{ start: margin, end: margin, text: `routine ${UNNAMED}\n` }]
     const missing = [`\`routine\` line above it`]
     if (!begins) {
       missing.push('`begin` line before the first instruction')
-      const first = this.firstInstruction()
-      const place = first ? first.start - (first.column - 1) : line.end
+      const first = ahead.find(({ role }) => role.kind !== 'declaration')?.line
+      const place = first ? lineStart(first) : line.end
       edits.push({ start: place, end: place, text: 'begin\n' })
     }
     if (this.endMissing) {
-      const last = this.lastLine() ?? line
+      const place = lineEnd(this.notes.text, ahead[ahead.length - 1]?.line.end ?? line.end)
       missing.push('`end` line below it')
-      edits.push({ start: last.end, end: last.end, text: '\nend' })
+      edits.push({ start: place, end: place, text: '\nend' })
     }
     this.notes.correct(
       span,
@@ -202,46 +184,32 @@ class Assembly {
       `Insert ${edits.map(edit => `\`${edit.text.trim()}\``).join(', ')}.`,
       { label: 'Insert the missing lines', edits: mergeEdits(edits) },
     )
-    if (!begins) this.begin = undefined
     this.beginReported = !begins
   }
 
-  private beginReported = false
-
   /** Whether a `begin` line is still to come, before the routine's end. */
   private expectsBegin(): boolean {
-    return this.ahead().some(step => step.kind === 'line' && step.role.kind === 'begin')
+    return this.lastBegin >= this.at
   }
 
-  private firstInstruction(): Line | undefined {
-    for (const step of this.ahead()) if (step.kind === 'line' && step.role.kind !== 'declaration') return step.line
-    return undefined
-  }
-
-  private lastLine(): Line | undefined {
-    let last: Line | undefined
-    for (const step of this.ahead()) if (step.kind === 'line') last = step.line
-    return last
-  }
-
-  private ahead(): readonly Step[] {
-    return this.steps.slice(this.at)
+  /** The lines from here on. */
+  private linesAhead(): { readonly line: Line; readonly role: Role }[] {
+    return this.steps.slice(this.at).filter(step => step.kind === 'line')
   }
 
   private takeBegin(line: Line, from: number): void {
     this.reader.readInstruction(line, from)
     this.notes.lost = false
     const span = lineSpan(line)
-    const frame = this.frames[this.frames.length - 1]
+    const frame = this.forms.innermost()
     if (frame || this.phase !== 'declarations') {
-      const margin = line.start - (line.column - 1)
       this.notes.correct(
         span,
         frame
           ? `A ${frame.kind === 'procedure' ? 'procedure' : `\`${frame.kind}\``} has no \`begin\` line: its instructions follow at once.`
           : 'The routine has begun already.',
         'Delete this `begin`.',
-        editsFix('Delete this line', [{ start: margin, end: afterLine(this.notes.text, line.end), text: '' }]),
+        deleteLineFix(this.notes.text, line),
       )
       return
     }
@@ -253,7 +221,7 @@ class Assembly {
   private requireBody(line: Line): void {
     if (this.phase !== 'declarations') return
     const span = lineSpan(line)
-    const place = line.start - (line.column - 1)
+    const place = lineStart(line)
     if (this.expectsBegin()) {
       if (!this.beginReported)
         this.notes.correct(
@@ -290,7 +258,6 @@ class Assembly {
     this.phase = 'after'
     this.declarations = []
     this.body = []
-    this.frames = []
     this.begin = undefined
     this.beginReported = false
   }
@@ -320,13 +287,13 @@ class Assembly {
     const count = labelTokens(line)
     if (count === 0) return 0
     const first = line.tokens[0]!
-    const declaring = this.phase === 'declarations' && this.frames.length === 0
+    const declaring = this.phase === 'declarations' && !this.forms.innermost()
     if (declaring && count < line.tokens.length && T.DECLARATION_WORDS.has(first.tokenType)) {
       this.takeColon(line, first)
       return line.tokens.length
     }
     if (role.kind === 'begin' || line.strays.length > 0) return count
-    if (this.frames.length === 0) this.requireBody(line)
+    if (!this.forms.innermost()) this.requireBody(line)
     for (let at = 0; at < count; at += 2) {
       const name = nameOf(line.tokens[at]!)
       this.add({ kind: 'label', name, span: joinSpans(name.span, markSpan(line.tokens[at + 1]!)) })
@@ -347,13 +314,13 @@ class Assembly {
   }
 
   private add(statement: Statement): void {
-    const frame = this.frames[this.frames.length - 1]
+    const frame = this.forms.innermost()
     if (frame) frame.body.push(statement)
     else if (this.phase === 'body') this.body.push(statement)
   }
 
   private takeDeclaration(line: Line, from: number): void {
-    const misplaced = this.phase !== 'declarations' || this.frames.length > 0
+    const misplaced = this.phase !== 'declarations' || this.forms.innermost() !== undefined
     if (misplaced) {
       // `check(x)` among instructions calls a procedure of that name.
       if (isCall(line.tokens, from)) {
@@ -369,7 +336,7 @@ class Assembly {
       this.refuseMisplaced(line, from)
     }
     const form = this.reader.readDeclaration(line, from)
-    const declaration = form && readDeclaration(form, this.spanFrom(line, from), this.notes)
+    const declaration = form && readDeclaration(form, restSpan(line, from), this.notes)
     if (declaration && !this.notes.lost) this.declarations.push(declaration)
     this.notes.lost = false
   }
@@ -387,19 +354,19 @@ class Assembly {
   }
 
   private refuseMisplaced(line: Line, from: number): void {
-    const frame = this.frames[this.frames.length - 1]
+    const frame = this.forms.innermost()
     const text = this.notes.read(line)
     const begin = this.begin
     const source = this.notes.text
     const edits =
       begin && begin.end > begin.start
         ? [
-            { start: begin.start - (begin.column - 1), end: begin.start - (begin.column - 1), text: `  ${text}\n` },
-            { start: line.start - (line.column - 1), end: afterLine(source, line.end), text: '' },
+            { start: lineStart(begin), end: lineStart(begin), text: `  ${text}\n` },
+            { start: lineStart(line), end: nextLine(source, line.end), text: '' },
           ]
         : undefined
     this.notes.correct(
-      this.spanFrom(line, from),
+      restSpan(line, from),
       `A declaration stands ${frame && !this.begin ? `inside the \`${frame.kind}\` of line ${frame.span.line}` : 'after `begin`'}: \`${line.tokens[from]!.image}\`.`,
       'Move it above the `begin` line.',
       edits && editsFix('Move it above `begin`', edits),
@@ -407,8 +374,8 @@ class Assembly {
   }
 
   private takeInstruction(line: Line, from: number): void {
-    const span = this.spanFrom(line, from)
-    if (this.phase === 'declarations' && this.frames.length === 0) {
+    const span = restSpan(line, from)
+    if (this.phase === 'declarations' && !this.forms.innermost()) {
       if (opensForeignDeclaration(line.tokens.slice(from)) || line.strays.length > 0) {
         this.reader.readInstruction(line, from)
         this.notes.lost = false
@@ -418,176 +385,37 @@ class Assembly {
       if (this.phase === 'declarations') return
     }
     const form = this.reader.readInstruction(line, from)
-    const statement = form && this.readHere(form, span)
+    const statement = form && readStatement(form, span, this.notes)
     if (statement && !this.notes.lost) this.add(statement)
     this.notes.lost = false
   }
 
-  private readHere(form: LineForm, span: Span): Statement | undefined {
-    return readStatement(form, span, this.notes)
-  }
-
-  private spanFrom(line: Line, from: number): Span {
-    const first = line.tokens[from]
-    return first ? { ...markSpan(first), end: line.end } : lineSpan(line)
-  }
-
-  // Forms
-
-  private openForm(line: Line, from: number, kind: Frame['kind']): void {
-    if (kind === 'procedure') {
-      this.openProcedure(line, from)
-      return
-    }
-    if (this.frames.length === 0) this.requireBody(line)
-    const span = this.spanFrom(line, from)
-    const form = this.reader.readInstruction(line, from)
-    const open = { span, body: [] }
-    if (kind === 'repeat') this.frames.push({ kind, ...open })
-    else if (kind === 'while') this.frames.push({ kind, condition: this.condition(form, span), ...open })
-    else if (kind === 'for') {
-      const parts = form?.kind === 'for' ? this.forParts(form) : undefined
-      this.frames.push({ kind, ...(parts && { parts }), ...open })
-    } else this.frames.push({ kind, branches: [], condition: this.condition(form, span), branch: span, ...open })
-    this.notes.lost = false
-  }
-
-  private condition(form: LineForm | undefined, span: Span): WordCondition {
-    const phrase: Phrase | undefined = form && 'condition' in form ? form.condition : undefined
-    return phrase ? readCondition(phrase, this.notes) : blankCondition(span)
-  }
-
-  private forParts(form: LineForm & { kind: 'for' }): ForParts {
-    const { opening, direction } = form
-    if (opening.tokenType !== T.From)
-      this.notes.correct(
-        markSpan(opening),
-        `\`${opening.image}\` does not open the range of a loop.`,
-        'Write `from`: `for i from E to F`.',
-        replaceFix('Write `from`', markSpan(opening), 'from'),
-      )
-    if (direction.tokenType === T.Range)
-      this.notes.correct(
-        markSpan(direction),
-        'A loop runs `to` or `downto` its last value.',
-        'Write `to`.',
-        replaceFix('Write `to`', markSpan(direction), ' to '),
-      )
-    return {
-      variable: nameOf(form.variable),
-      from: readWord(form.from, this.notes),
-      to: readWord(form.to, this.notes),
-      down: direction.tokenType === T.Downto,
-      ...(form.step && { step: readWord(form.step, this.notes) }),
-    }
-  }
-
-  private openProcedure(line: Line, from: number): void {
-    const span = this.spanFrom(line, from)
-    const outer = this.frames[this.frames.length - 1]
-    if (outer)
-      this.notes.correct(
-        span,
-        `A procedure stands inside the \`${outer.kind}\` of line ${outer.span.line}.`,
-        'Move it to the declarations, before `begin`.',
-      )
-    const form = this.reader.readInstruction(line, from)
-    const good = form?.kind === 'procedure' ? form : undefined
-    if (good && (WORD_NAMES.has(good.name.image) || ELSEWHERE.has(good.name.image)))
-      this.notes.correct(
-        markSpan(good.name),
-        `\`${good.name.image}\` is a function of the notation; no procedure can be called so.`,
-        'Take another name.',
-      )
-    this.frames.push({
-      kind: 'procedure',
-      ...(good && { form: good }),
-      nested: outer !== undefined,
-      span,
-      body: [],
-    })
-    this.notes.lost = false
-  }
-
-  private takeElse(line: Line, from: number): void {
-    const frame = this.frames[this.frames.length - 1]
-    if (frame?.kind !== 'if') return
-    const span = this.spanFrom(line, from)
-    const form = this.readElse(line, from)
-    this.closeBranch(frame)
-    if (frame.otherwise)
-      this.notes.correct(
-        span,
-        `Another \`else\` stands above this one, on line ${frame.otherwise.line}, and takes all that is left.`,
-        'Put the last `else` last, or open a new `if`.',
-      )
-    frame.body = []
-    if (form?.kind === 'else' && !form.condition) frame.otherwise = span
-    else {
-      frame.condition = this.condition(form, span)
-      frame.branch = span
-      delete frame.otherwise
-    }
-    this.notes.lost = false
-  }
-
-  /** `else`, `else if C`, or what other languages write for them. */
-  private readElse(line: Line, from: number): LineForm | undefined {
-    const first = line.tokens[from]!
-    if (first.tokenType === T.Else) return this.reader.readInstruction(line, from)
-    const span = markSpan(first)
-    const foreign = first.tokenType === T.Name
-    this.notes.correct(
-      span,
-      foreign ? `\`${first.image}\` is no word of the notation.` : 'Braces hold nothing together here: `}`.',
-      foreign ? 'Write `else if`.' : 'Delete the brace.',
-      replaceFix(foreign ? 'Write `else if`' : 'Delete the brace', span, foreign ? 'else if' : ''),
-    )
-    const rest = line.tokens.slice(from + 1)
-    const [next] = rest
-    if (!next) return undefined
-    // Read on as `else if C`.
-    const tokens = foreign ? [{ ...first, tokenType: T.If, tokenTypeIdx: T.If.tokenTypeIdx! }, ...rest] : rest
-    const form = this.reader.readInstruction({ ...line, tokens }, 0)
-    return form?.kind === 'if' ? { kind: 'else', condition: form.condition } : form
-  }
-
-  private closeBranch(frame: Frame & { kind: 'if' }): void {
-    if (frame.otherwise) return
-    frame.branches.push({ condition: frame.condition, body: frame.body, span: frame.branch })
-  }
-
   private takeEnd(line: Line, from: number, until: boolean): void {
-    const span = this.spanFrom(line, from)
-    const frame = this.frames[this.frames.length - 1]
-    const condition = until ? this.condition(this.reader.readInstruction(line, from), span) : blankCondition(span)
-    if (!until) this.readEnd(line, from)
+    const span = restSpan(line, from)
+    const frame = this.forms.innermost()
+    const form = until ? this.reader.readInstruction(line, from) : undefined
+    if (!until) this.forms.readEnd(line, from)
+    const condition = this.forms.condition(form, span)
     this.notes.lost = false
-    if (frame) this.closeFrame(span, condition)
+    if (frame) this.closeForm(span, condition)
     else this.closeRoutine(span)
   }
 
-  /** `end`, or what other languages write for it. */
-  private readEnd(line: Line, from: number): void {
-    const rest = line.tokens.slice(from)
-    const [first] = rest
-    if (first?.tokenType === T.End && rest.length === 1 && line.strays.length === 0) return
-    const span = this.spanFrom(line, from)
-    this.notes.correct(
-      span,
-      first?.tokenType === T.End
-        ? `Found \`${rest[1]?.image ?? this.notes.read(line.strays[0]!.span)}\` after \`end\`, which stands alone on its line.`
-        : `\`${this.notes.read(span)}\` is no word of the notation.`,
-      'Write `end`.',
-      replaceFix('Write `end`', span, 'end'),
-    )
+  private closeForm(end: Span, until: WordCondition): void {
+    const closed = this.forms.close(end, until)
+    if (!closed) return
+    const { tree, nested } = closed
+    // A procedure that stands where none may is read as if it stood where it should.
+    if (tree.kind === 'procedure' && (nested || this.phase === 'declarations')) this.declarations.push(tree)
+    else this.add(tree)
   }
 
+  /** Closes the innermost form, or the routine, whose last line is missing and has been reported. */
   private closeMissing(): void {
     const { start, line, column } = this.last ? lineSpan(this.last) : this.start
     const place = this.last?.end ?? start
     const end: Span = { start: place, end: place, line, column }
-    if (this.frames.length > 0) this.closeFrame(end, blankCondition(end))
+    if (this.forms.innermost()) this.closeForm(end, blankCondition(end))
     else if (this.phase === 'declarations' || this.phase === 'body') {
       if (this.phase === 'declarations' && !this.beginReported) this.reportEmpty(end)
       this.finish(end)
@@ -596,7 +424,7 @@ class Assembly {
 
   private closeRoutine(span: Span): void {
     if (this.phase === 'declarations' && !this.beginReported) {
-      const place = span.start - (span.column - 1)
+      const place = lineStart(span)
       this.notes.correct(
         span,
         'A `begin` line is missing: the routine has declarations alone.',
@@ -615,46 +443,6 @@ class Assembly {
       editsFix('Insert `begin`', [{ start: end.start, end: end.start, text: '\nbegin' }]),
     )
   }
-
-  private closeFrame(end: Span, until: WordCondition): void {
-    const frame = this.frames.pop()
-    if (!frame) return
-    const span = joinSpans(frame.span, end)
-    const { body } = frame
-    switch (frame.kind) {
-      case 'while':
-        this.add({ kind: 'while', condition: frame.condition, body, end, span })
-        break
-      case 'repeat':
-        this.add({ kind: 'repeat', body, until, end, span })
-        break
-      case 'for':
-        // A loop whose first line means nothing keeps its instructions out of the tree.
-        if (frame.parts) this.add({ kind: 'for', ...frame.parts, body, end, span })
-        break
-      case 'if': {
-        this.closeBranch(frame)
-        const otherwise = frame.otherwise && { otherwise: { body, span: frame.otherwise } }
-        this.add({ kind: 'if', branches: frame.branches, ...otherwise, end, span })
-        break
-      }
-      case 'procedure': {
-        if (!frame.form) return
-        const { name, parameters, results } = frame.form
-        const tree: ProcedureTree = {
-          kind: 'procedure',
-          name: nameOf(name),
-          parameters: parameters.map(nameOf),
-          results: results.map(nameOf),
-          body,
-          end,
-          span,
-        }
-        if (frame.nested || this.phase === 'declarations') this.declarations.push(tree)
-        else this.add(tree)
-      }
-    }
-  }
 }
 
 /** Whether the tokens from `from` on are a name and one pair of brackets. */
@@ -667,24 +455,4 @@ function isCall(tokens: readonly Mark[], from: number): boolean {
     else if (type === T.RightParen && --open === 0) return at === tokens.length - 1
   }
   return false
-}
-
-/** Edits at one place as one edit, in the order in which they were listed. */
-function mergeEdits(edits: readonly { start: number; end: number; text: string }[]) {
-  const merged: { start: number; end: number; text: string }[] = []
-  for (const edit of edits) {
-    const last = merged[merged.length - 1]
-    if (last && last.start === edit.start && last.end === edit.end) last.text += edit.text
-    else merged.push({ ...edit })
-  }
-  return merged
-}
-
-/** The offset after the line break that follows `end`. */
-function afterLine(text: string, end: number): number {
-  let at = end
-  while (at < text.length && text[at] !== '\n' && text[at] !== '\r') at++
-  if (text[at] === '\r') at++
-  if (text[at] === '\n') at++
-  return at
 }

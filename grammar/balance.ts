@@ -1,6 +1,7 @@
+import { deleteLineFix, editsFix, type Fix, lineEnd } from './edits'
 import type { Line } from './lines'
 import { lineSpan } from './lines'
-import { editsFix, type Notes } from './notes'
+import type { Notes } from './notes'
 import { type FormKind, type Role, roleOf } from './roles'
 import * as T from './tokens'
 
@@ -164,7 +165,7 @@ class Balance {
       form === 'repeat'
         ? 'Close it with `until C`.'
         : `Close it with \`end\` on a line of its own${form === 'routine' && this.items.some(opensInner) ? '; or close the form inside it that lacks its own' : ''}.`,
-      form === 'repeat' ? undefined : editsFix('Insert `end`', [{ start: at, end: at, text }]),
+      form === 'repeat' ? undefined : insertEnd(this.notes.text, at, text),
     )
   }
 
@@ -199,12 +200,11 @@ class Balance {
       (this.short < 0 && opening.indented === true && line.column > opening.line.column)
     if (extra) {
       this.short++
-      const lineStart = line.start - (line.column - 1)
       this.notes.correct(
         lineSpan(line),
         'This `end` closes nothing.',
         'Delete it.',
-        editsFix('Delete this line', [{ start: lineStart, end: line.end, text: '' }]),
+        deleteLineFix(this.notes.text, line),
       )
       return false
     }
@@ -236,6 +236,11 @@ class Balance {
     else if (role.kind === 'close') this.skipping--
     return true
   }
+}
+
+function insertEnd(source: string, after: number, text: string): Fix {
+  const place = lineEnd(source, after)
+  return editsFix('Insert `end`', [{ start: place, end: place, text }])
 }
 
 function opensInner({ role }: Item): boolean {

@@ -1,6 +1,7 @@
+import { replaceFix } from './edits'
 import { readExact, readExactCondition } from './exact'
 import { type Mark, markSpan } from './lines'
-import { type Notes, replaceFix } from './notes'
+import type { Notes } from './notes'
 import type { LineForm } from './parser'
 import type { Span } from './span'
 import * as T from './tokens'

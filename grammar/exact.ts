@@ -1,12 +1,14 @@
 import type { TokenType } from 'chevrotain'
+import { correctBang, isComparison, isConditional, readComparison, readJunction, refuseChain } from './condition'
+import { editsFix, replaceFix } from './edits'
 import { type Mark, markSpan } from './lines'
-import { editsFix, type Notes, replaceFix } from './notes'
+import type { Notes } from './notes'
 import { readExactNumeral } from './numeral'
 import { LEVEL, type Phrase } from './phrase'
 import type { Span } from './span'
 import * as T from './tokens'
 import type { Content, Exact, ExactCondition, ExactFunction, ExactOperator } from './tree'
-import { correctBang, isComparison, isConditional, nameOf, readComparison, readJunction, refuseChain } from './word'
+import { nameOf } from './word'
 
 const OPERATORS = new Map<TokenType, ExactOperator>([
   [T.Plus, '+'],

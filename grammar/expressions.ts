@@ -1,6 +1,6 @@
 import { EXACT_LEVELS } from './exact'
 import { LEVEL } from './phrase'
-import type { Content, Exact, ExactCondition, WordCondition, WordExpression } from './tree'
+import type { Content, Exact, ExactCondition, WordCondition, WordExpression, WordOperator } from './tree'
 import { WORD_LEVELS } from './word'
 
 /** Binds tighter than any operator. */
@@ -153,11 +153,23 @@ export function printWord(expression: WordExpression): string {
     case 'address':
       return `addr(${expression.array.text})`
     case 'binary': {
-      const level = WORD_LEVELS[expression.operator]
-      const left = wordOperand(expression.left, level)
-      return `${left} ${expression.operator} ${wordOperand(expression.right, level + 1)}`
+      const { operator } = expression
+      const level = WORD_LEVELS[operator]
+      const left = bitOperand(expression.left, operator) ?? wordOperand(expression.left, level)
+      const right = bitOperand(expression.right, operator) ?? wordOperand(expression.right, level + 1)
+      return `${left} ${operator} ${right}`
     }
   }
+}
+
+/**
+ * An operand of a shift or a bitwise operator keeps its brackets where another operator is inside, needed or not:
+ * `(x >> 17) | (x << 15)`. Few readers have the order of these in their heads, and no two languages agree on it.
+ */
+function bitOperand(operand: WordExpression, operator: WordOperator): string | undefined {
+  if (operand.kind !== 'binary' || WORD_LEVELS[operator] >= LEVEL.plus || operand.operator === operator)
+    return undefined
+  return `(${printWord(operand)})`
 }
 
 function wordLevel(expression: WordExpression): number {

@@ -1,6 +1,6 @@
+import { editsFix, replaceFix } from './edits'
 import { lineSpan, type Mark, markSpan } from './lines'
-import type { Recogniser } from './mistakes'
-import { editsFix, replaceFix } from './notes'
+import type { Recogniser } from './slip'
 import * as T from './tokens'
 
 const SMALL_WORDS: ReadonlySet<string> = new Set([...T.RESERVED_WORDS, ...T.PLACED_WORDS])

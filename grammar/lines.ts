@@ -48,6 +48,12 @@ export function lineSpan(line: Line): Span {
   return { start: line.start, end: line.end, line: line.line, column: line.column }
 }
 
+/** The span of a line from its token number `from` on. */
+export function restSpan(line: Line, from: number): Span {
+  const first = line.tokens[from]
+  return first ? { ...markSpan(first), end: line.end } : lineSpan(line)
+}
+
 /** Words that begin an instruction or a form: where a source line starts with one, nothing before it goes on. */
 const STARTERS: ReadonlySet<unknown> = new Set([
   T.Routine,

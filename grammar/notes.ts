@@ -1,11 +1,9 @@
-import type { Diagnostic, Edit } from './diagnostic'
+import type { Diagnostic } from './diagnostic'
+import type { Fix } from './edits'
 import type { Span } from './span'
 
 /** The most diagnostics that one text is given; past it a last one says that there are more. */
 const MOST_NOTES = 200
-
-/** A remedy as edits. */
-export type Fix = NonNullable<Diagnostic['fix']>
 
 /** What is said of a text while it is read. */
 export class Notes {
@@ -53,14 +51,4 @@ export class Notes {
       })
     return sorted
   }
-}
-
-/** A fix that puts `text` in place of what stands under `span`. */
-export function replaceFix(label: string, span: { start: number; end: number }, text: string): Fix {
-  return { label, edits: [{ start: span.start, end: span.end, text }] }
-}
-
-/** A fix of several edits, put in order. */
-export function editsFix(label: string, edits: readonly Edit[]): Fix {
-  return { label, edits: [...edits].sort((a, b) => a.start - b.start) }
 }

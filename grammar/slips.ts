@@ -1,7 +1,7 @@
+import { editsFix, replaceFix } from './edits'
 import { EXACT_NAMES } from './exact'
 import { type Mark, markSpan } from './lines'
-import { type Break, LINE_END, type Recogniser } from './mistakes'
-import { editsFix, replaceFix } from './notes'
+import { type Break, LINE_END, type Recogniser } from './slip'
 import * as T from './tokens'
 import { WORD_NAMES } from './word'
 
