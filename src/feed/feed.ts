@@ -1,5 +1,5 @@
 import type { Binding, Input } from '../machine/run'
-import type { Words } from '../routine'
+import type { FeedDeclaration, Words } from '../routine'
 import { drawWord } from './draw'
 import { openSource } from './generator'
 import { drawArray, type FeedPattern } from './pattern'
@@ -22,10 +22,11 @@ export function feedInput(
   for (const [number, { name, role }] of routine.arrays.entries()) {
     if (role !== 'in' && role !== 'inout') continue
     const { length } = binding.arrays[number]!
-    const feed = routine.feeds.find(known => known.name === name)
-    const bounds = boundsOf(feed, binding, length)
+    // A range and `distinct` are lines of their own.
+    const feeds = routine.feeds.filter(feed => feed.name === name)
+    const bounds = boundsOf(rangeOf(feeds), binding, length)
     if ('problem' in bounds) return { problem: `feed: ${name} ${bounds.problem}` }
-    const order = { width, length, bounds, distinct: feed?.distinct ?? false }
+    const order = { width, length, bounds, distinct: feeds.some(({ distinct }) => distinct) }
     const drawn = drawArray(pattern, order, openSource(seed, name))
     if ('problem' in drawn) return { problem: `feed: ${name} ${drawn.problem}` }
     arrays[name] = drawn.words
@@ -33,14 +34,15 @@ export function feedInput(
   const scalars: Record<string, bigint> = {}
   for (const { name, role } of routine.scalars) {
     if (role === 'out') continue
-    const bounds = boundsOf(
-      routine.feeds.find(known => known.name === name),
-      binding,
-    )
+    const bounds = boundsOf(rangeOf(routine.feeds.filter(feed => feed.name === name)), binding)
     if ('problem' in bounds) return { problem: `feed: ${name} ${bounds.problem}` }
     if (bounds.kind === 'same') scalars[name] = drawWord(bounds.low, bounds.high, openSource(seed, name))
   }
   return { input: { arrays, scalars, junk: junkOf(seed) } }
+}
+
+function rangeOf(feeds: readonly FeedDeclaration[]): FeedDeclaration['range'] {
+  return feeds.find(({ range }) => range)?.range
 }
 
 /** The seed of the junk that goes with a run's input. */

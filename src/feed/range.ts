@@ -11,16 +11,15 @@ import {
 import type { Bounds } from './bounds'
 
 /**
- * The legal words of an input at a point: what its `feed` line says, both ends included, fractions taken inwards, or
+ * The legal words of an input at a point: what its range says, both ends included, fractions taken inwards, or
  * every word where there is none. `length` is absent for a scalar. The problem follows the input's name.
  */
 export function boundsOf(
-  feed: FeedDeclaration | undefined,
+  range: FeedDeclaration['range'],
   binding: Binding,
   length?: number,
 ): Bounds | { problem: string } {
   const top = (1n << BigInt(binding.point.width)) - 1n
-  const range = feed?.range
   if (!range || length === 0) return { kind: 'same', low: 0n, high: top }
   const index = range.index?.text
   const lowOf = compileExact(taken('ceil', range.from))

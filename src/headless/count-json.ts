@@ -1,7 +1,6 @@
-import type { Binding, RunResult, Tally } from '../machine'
+import { type Binding, type RunResult, type Tally, weighTally } from '../machine'
 import type { Words } from '../routine'
-import { exactTime, type GridPoint, plainCount, printCharges, type Setting, type Verdict } from '../sweep'
-import { countedLines } from './counted-lines'
+import { type GridPoint, plainCount, printCharges, type Setting, type Verdict } from '../sweep'
 import { type Note, notesOf } from './notes'
 
 /** One good run and all that is said of it. */
@@ -22,6 +21,7 @@ export interface CountReport {
  */
 export function writeCountJson({ binding, setting, point, result, tally, verdicts }: CountReport): string {
   const { charges } = setting
+  const weighed = weighTally(tally, charges)
   const report = {
     routine: binding.program.routine.name,
     n: point.n,
@@ -29,9 +29,9 @@ export function writeCountJson({ binding, setting, point, result, tally, verdict
     w: point.width,
     set: point.set,
     charges: printCharges(charges),
-    time: plainCount(exactTime(tally, charges)),
+    time: plainCount(weighed.time),
     byClass: tally.byClass,
-    byLine: countedLines(tally, charges).map(({ line, count, time }) => ({ line, count, time: plainCount(time) })),
+    byLine: weighed.byLine.map(({ line, count, time }) => ({ line, count, time: plainCount(time) })),
     space: tally.space,
     outputs: outputsOf(binding, result),
     audit: notesOf(binding).map(plainNote),

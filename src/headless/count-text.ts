@@ -1,7 +1,7 @@
+import { weighTally } from '../machine'
 import { OPERATION_CLASSES } from '../routine'
-import { exactTime, printCharges } from '../sweep'
+import { printCharges } from '../sweep'
 import { type CountReport, outputsOf } from './count-json'
-import { countedLines } from './counted-lines'
 import { notesOf } from './notes'
 import { type Column, groupDigits, layTable } from './table'
 
@@ -48,7 +48,7 @@ function byClass({ tally, setting: { charges } }: CountReport): string {
   }))
   if (charges.index > 0) counts.push({ name: 'index', count: tally.indexed, charge: charges.index })
   const used = counts.filter(({ count }) => count > 0)
-  const time = exactTime(tally, charges)
+  const { time } = weighTally(tally, charges)
   if (unit) {
     const columns: Column[] = [
       { title: 'class', align: 'left' },
@@ -76,7 +76,7 @@ function byClass({ tally, setting: { charges } }: CountReport): string {
 function byLine({ binding, tally, setting: { charges } }: CountReport): string {
   const { text, tree } = binding.program.routine
   const lines = text.split(/\r\n|\r|\n/)
-  const counted = new Map(countedLines(tally, charges).map(line => [line.line, line]))
+  const counted = new Map(weighTally(tally, charges).byLine.map(line => [line.line, line]))
   const unit = printCharges(charges) === 'unit'
   const columns: Column[] = [
     { title: 'line', align: 'right' },

@@ -5,7 +5,7 @@ import { type CountReport, writeCountJson } from './count-json'
 import { writeCountText } from './count-text'
 import type { Arguments, Flag } from './flags'
 import { RUN_FLAGS, readCount, readSetting, readWay } from './setting-flags'
-import { readSource, readText, type Source, sayAt, sayDiagnostic } from './source'
+import { readSource, readText, type Source, sayAt, sayDiagnostic, sayFailure } from './source'
 import { EXIT, type Exit, Leave, misuse, type Terminal } from './terminal'
 
 export const COUNT_FLAGS: readonly Flag[] = [
@@ -43,7 +43,7 @@ export async function count(given: Arguments, terminal: Terminal): Promise<Exit>
     ? takeData(data.file, readInput(data.data, binding, seed))
     : takeData(source.file, feedInput(binding, setting.pattern, seed))
   const result = await runBinding(binding, fed.input, way ? { way } : {})
-  if (!result.ok) throw new Leave(EXIT.failed, sayAt(source.file, result.failure.span, result.failure.message))
+  if (!result.ok) throw new Leave(EXIT.failed, sayFailure(source.file, result.failure))
   const tally = tallyRun(binding, result)
   const verdicts = judgeRun(binding, fed.input, result, tally, setting.charges)
   const report: CountReport = {

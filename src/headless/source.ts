@@ -1,6 +1,7 @@
 import { readFile } from 'node:fs/promises'
 import { resolve } from 'node:path'
 import type { Diagnostic, Span } from '../../grammar'
+import type { Failure } from '../machine'
 import { type Program, readProgram } from '../routine'
 import { EXIT, Leave, misuse, type Terminal } from './terminal'
 
@@ -54,14 +55,19 @@ export async function readSource(
   return { file, program }
 }
 
-/** `file:line:column: message; remedy`, and the further places of the message below it. */
+/** `file:line:column: message. Remedy.`, and the further places of the message below it. */
 export function sayDiagnostic(file: string, { severity, span, message, remedy, path = [] }: Diagnostic): string {
   const kind = severity === 'warning' ? 'warning: ' : ''
   const further = path.map(step => `\n  ${sayAt(file, step.span, step.note)}`)
-  return sayAt(file, span, `${kind}${message}${remedy ? `; ${remedy}` : ''}`) + further.join('')
+  return sayAt(file, span, `${kind}${message.replace(/\.?$/, '.')} ${remedy}`.trimEnd()) + further.join('')
 }
 
 /** A message at its place. */
 export function sayAt(file: string, span: Span | undefined, message: string): string {
   return span ? `${file}:${span.line}:${span.column}: ${message}` : `${file}: ${message}`
+}
+
+/** A failed run at its place; the message names the line too, which here stands before it. */
+export function sayFailure(file: string, { span, message }: Failure): string {
+  return sayAt(file, span, message.replace(/^line \d+: /, ''))
 }

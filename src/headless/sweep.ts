@@ -1,6 +1,7 @@
 import { mkdir, writeFile } from 'node:fs/promises'
 import { join, resolve } from 'node:path'
-import { exactTime, type PointResult, runSweep, type SweepResult, writeCsv, writeRecord } from '../sweep'
+import { weighTally } from '../machine'
+import { type PointResult, runSweep, type SweepResult, writeCsv, writeRecord } from '../sweep'
 import { DISCLAIMER } from './count-text'
 import type { Arguments, Flag } from './flags'
 import { sayPlace, saySetting } from './say'
@@ -14,6 +15,8 @@ export const SWEEP_FLAGS: readonly Flag[] = [
   { name: 'out', value: 'DIR', help: 'write ROUTINE.csv and ROUTINE.json there instead of a table' },
   { name: 'json', help: 'print the JSON instead of a table' },
 ]
+
+type Done = Extract<PointResult, { status: 'done' }>
 
 /** `sweep`: every point of a grid, as a table or as files. */
 export async function sweep(given: Arguments, terminal: Terminal): Promise<Exit> {
@@ -81,7 +84,7 @@ async function writeFiles(terminal: Terminal, folder: string, result: SweepResul
 function layResult(result: SweepResult): string {
   const { points, setting } = result
   const sizes = Object.keys(points[0]?.point.sizes ?? {})
-  const spread = points.some(point => point.status === 'done' && timesOf(point, result).size > 1)
+  const spread = points.some(point => point.status === 'done' && new Set(timesOf(point, result)).size > 1)
   const right = (title: string): Column => ({ title, align: 'right' })
   const columns: Column[] = [
     ...sizes.map(right),
@@ -102,16 +105,13 @@ function layResult(result: SweepResult): string {
   return [saySetting(result.routine, setting), layTable(columns, rows), DISCLAIMER].join('\n\n')
 }
 
-function timesOf({ trials }: Extract<PointResult, { status: 'done' }>, { setting }: SweepResult): Set<bigint> {
-  return new Set(trials.map(({ tally }) => exactTime(tally, setting.charges)))
+/** Each trial's operations at their charges. */
+function timesOf({ trials }: Done, { setting }: SweepResult): bigint[] {
+  return trials.map(({ tally }) => BigInt(weighTally(tally, setting.charges).time))
 }
 
-function timeCells(
-  point: Extract<PointResult, { status: 'done' }>,
-  result: SweepResult,
-  spread: boolean,
-): string[] {
-  const times = point.trials.map(({ tally }) => exactTime(tally, result.setting.charges))
+function timeCells(point: Done, result: SweepResult, spread: boolean): string[] {
+  const times = timesOf(point, result)
   if (!spread) return [groupDigits(times[0]!)]
   const least = times.reduce((a, b) => (a < b ? a : b))
   const most = times.reduce((a, b) => (a > b ? a : b))
@@ -126,7 +126,7 @@ function sayMean(sum: bigint, count: bigint): string {
   return `${groupDigits(tenths / 10n)}.${tenths % 10n}`
 }
 
-function sayVerdicts({ verdicts }: Extract<PointResult, { status: 'done' }>): string {
+function sayVerdicts({ verdicts }: Done): string {
   const bad = verdicts.filter(({ outcome }) => outcome !== 'holds')
   return bad
     .map(({ kind, line, outcome }) => `${kind === 'check' ? 'check' : `claim ${kind}`} line ${line} ${outcome}`)

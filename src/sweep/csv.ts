@@ -1,8 +1,7 @@
-import type { Charges, Tally } from '../machine'
+import { type Charges, type Tally, weighTally } from '../machine'
 import { OPERATION_CLASSES } from '../routine'
 import { printCharges } from './charges'
 import type { PointResult, SweepResult, TrialTally } from './result'
-import { exactTime } from './time'
 import { printWidth } from './widths'
 
 /** Columns after those that place a row; every figure is a whole number of operations or words. */
@@ -51,7 +50,7 @@ function sizeNames({ points }: SweepResult): string[] {
 }
 
 function trialCells({ seed, tally }: TrialTally, number: number, charges: Charges, charged: string) {
-  return [number + 1, seed, charged, exactTime(tally, charges), ...countCells(tally)]
+  return [number + 1, seed, charged, weighTally(tally, charges).time, ...countCells(tally)]
 }
 
 function countCells({ byClass, indexed, space }: Tally): number[] {

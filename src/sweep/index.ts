@@ -11,5 +11,4 @@ export type { GridPoint, PointResult, SweepResult, TrialTally, Verdict } from '.
 export { FEED_PATTERNS, type FeedPattern, type Setting, type SizeRange, type WidthChoice } from './setting'
 export { parseSizes, parseWhole } from './sizes'
 export { runSweep, type SweepOptions } from './sweep'
-export { exactTime } from './time'
 export { parseWidths, printWidth, widthAt } from './widths'

@@ -66,7 +66,10 @@ export function bindPoint(
   const at = choice ? widthAt(choice, point.sizes) : { width: point.width }
   if ('problem' in at) return { reason: at.problem }
   const [refused] = refuseClasses(program, INSTRUCTION_SETS[point.set])
-  if (refused) return { reason: refused.message, span: refused.span }
+  if (refused) {
+    const expand = setting.off === 'expand' ? ', and there is no expansion of it yet' : ''
+    return { reason: `${refused.message}${expand}`, span: refused.span }
+  }
   const bound = bindProgram(program, { width: point.width, sizes: point.sizes, lets: setting.lets }, limits)
   return 'binding' in bound ? bound : bound.refusal
 }

@@ -1,8 +1,7 @@
 import { GENERATOR } from '../feed'
-import type { Charges } from '../machine'
+import { type Charges, type Count, weighTally } from '../machine'
 import { printCharges } from './charges'
 import type { PointResult, SweepResult, TrialTally } from './result'
-import { exactTime } from './time'
 import { printWidth } from './widths'
 
 /**
@@ -43,10 +42,10 @@ function plainPoint(result: PointResult, charges: Charges) {
 
 function plainTrial({ seed, tally }: TrialTally, charges: Charges) {
   const { byClass, byLine, indexed, space } = tally
-  return { seed, time: plainCount(exactTime(tally, charges)), byClass, indexed, space, byLine }
+  return { seed, time: plainCount(weighTally(tally, charges).time), byClass, indexed, space, byLine }
 }
 
 /** As a number where a JSON reader keeps it exactly, else as text. */
-export function plainCount(count: bigint): number | string {
-  return count <= BigInt(Number.MAX_SAFE_INTEGER) ? Number(count) : String(count)
+export function plainCount(count: Count): number | string {
+  return typeof count === 'number' ? count : String(count)
 }
