@@ -93,6 +93,10 @@ function runEngine(
   return { time, checksum: checksumOf(words), good }
 }
 
+function timeOf({ binding }: Ready, good: RunResult & { ok: true }): number {
+  return Number(weighTally(tallyRun(binding, good), CHARGES.unit).time)
+}
+
 function checksumOf(words: Iterable<bigint | number>): bigint {
   let checksum = 0n
   for (const word of words) checksum = BigInt.asUintN(64, checksum * 31n + BigInt(word))
@@ -146,7 +150,7 @@ function compareCase(each: BenchCase, width: number): number | undefined {
   // A first long run stays in the host's baseline tier: a short one warms the module up.
   runEngine(prepare(each, width, each.growth[0] ?? 256), each.result)
   const first = runEngine(ready, each.result)
-  const operations = weighTally(tallyRun(ready.binding, first.good), CHARGES.unit).time
+  const operations = timeOf(ready, first.good)
   const engine: number[] = []
   const c: number[] = []
   for (let round = 0; round < rounds; round += 1) {
@@ -180,7 +184,7 @@ function compareJavaScript(): void {
   const each = CASES.find(({ name }) => name === 'radix')!
   const ready = prepare(each, 64, each.n)
   const { good, checksum } = runEngine(ready, each.result)
-  const operations = weighTally(tallyRun(ready.binding, good), CHARGES.unit).time
+  const operations = timeOf(ready, good)
   const versions = { BigInt: radixOnBigInts, 'Uint32Array halves': radixOnHalves }
   const times = Object.fromEntries(Object.keys(versions).map(name => [name, [] as number[]]))
   const engine: number[] = []
@@ -206,7 +210,7 @@ function showGrowth(each: BenchCase): void {
   const cells = each.growth.map(n => {
     const ready = prepare(each, width, n)
     const { time, good } = runEngine(ready, each.result)
-    const operations = weighTally(tallyRun(ready.binding, good), CHARGES.unit).time
+    const operations = timeOf(ready, good)
     // Short runs are repeated until about 20 ms are spent on them.
     const repeats = Math.max(3, Math.min(2000, Math.ceil(20 / Math.max(time, 0.001))))
     const times = Array.from({ length: repeats }, () => runEngine(ready, each.result).time)

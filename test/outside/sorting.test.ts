@@ -72,7 +72,7 @@ describe('merge sort', () => {
     expect(A001855.map((_, i) => worstCase(i + 1))).toEqual(A001855)
   })
 
-  test.each([1, 2, 3, 4, 5, 6, 7])('worst case over all permutations of %i words', n => {
+  test.each([1, 2, 3, 4, 5, 6])('worst case over all permutations of %i words', n => {
     const all = permutations(Array.from({ length: n }, (_, i) => i))
     expect(Math.max(...all.map(comparisons))).toBe(A001855[n - 1])
   })

@@ -101,7 +101,7 @@ export class TwoWays {
         if (!words) throw new Error(`no array ${name} among the results`)
         return Array.from(words, BigInt)
       },
-      time: (charges = CHARGES.unit) => weighTally(tally, charges).time,
+      time: (charges = CHARGES.unit) => Number(weighTally(tally, charges).time),
       operationsAt(part) {
         const line = lines.findIndex(text => text.includes(part)) + 1
         if (line === 0) throw new Error(`no line holds "${part}"`)
