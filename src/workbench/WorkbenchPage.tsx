@@ -1,11 +1,13 @@
 import type { ReactNode } from 'react'
 import { DraftSection } from './draft/DraftSection'
+import { FaultBoundary } from './FaultBoundary'
 import { GridSection } from './grid/GridSection'
 import { DropZone } from './head/DropZone'
 import { Head } from './head/Head'
 import { Notices } from './head/Notices'
 import { type Layout, useLayout } from './layout'
 import { SettingSection } from './setting/Setting'
+import { useWorkbench } from './use'
 
 type Part = 'draft' | 'lead'
 
@@ -19,13 +21,20 @@ const ORDER: Readonly<Record<Layout, readonly Part[]>> = {
 
 /** The whole page. */
 export function WorkbenchPage() {
+  const workbench = useWorkbench()
   const layout = useLayout()
   const parts: Readonly<Record<Part, ReactNode>> = {
     // Keyed, so that another order moves the draft's editor instead of making it anew.
-    draft: <DraftSection key="draft" />,
+    draft: (
+      <FaultBoundary key="draft" workbench={workbench}>
+        <DraftSection />
+      </FaultBoundary>
+    ),
     lead: (
       <div key="lead" className="lead">
-        <GridSection />
+        <FaultBoundary workbench={workbench}>
+          <GridSection />
+        </FaultBoundary>
       </div>
     ),
   }
@@ -36,7 +45,13 @@ export function WorkbenchPage() {
       </a>
       <Head />
       <Notices />
-      <SettingSection />
+      <FaultBoundary workbench={workbench}>
+        <SettingSection />
+      </FaultBoundary>
+      <nav className="jump" aria-label="Parts of the page">
+        <a href="#grid">Grid</a>
+        <a href="#draft">Draft</a>
+      </nav>
       <main className="paper">{ORDER[layout].map(part => parts[part])}</main>
       <DropZone />
     </>

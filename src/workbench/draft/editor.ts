@@ -13,6 +13,7 @@ import {
   lineNumbers,
 } from '@codemirror/view'
 import { colouring } from './colouring'
+import { hangingIndent } from './hanging-indent'
 import { marginColumns } from './margin'
 import { fixHere, goToNextMessage, messages } from './messages'
 
@@ -77,6 +78,7 @@ function extensions(calls: EditorCalls, describedBy: string): Extension {
     indent,
     EditorState.tabSize.of(2),
     EditorView.lineWrapping,
+    hangingIndent,
     colouring,
     messages,
     marginColumns,

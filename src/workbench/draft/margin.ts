@@ -55,7 +55,7 @@ function put(placed: readonly Placed[]): Margin {
   }
 }
 
-/** Pixels of the longest bar. */
+/** Pixels of the costliest line's bar. */
 const BAR = 48
 /** Shares of the routine's time from which a count is set bold, and below which it is set back. */
 const HOT = 0.1
@@ -103,7 +103,7 @@ class CellMarker extends GutterMarker {
       if (cell.share >= HOT) row.classList.add('hot')
       else if (cell.share < COLD) row.classList.add('cold')
       const bar = document.createElement('s')
-      bar.style.width = `${Math.max(cell.share * BAR, cell.time > 0 ? 1 : 0)}px`
+      bar.style.width = `${Math.max(cell.bar * BAR, cell.time > 0 ? 1 : 0)}px`
       row.append(bar)
     }
     return row

@@ -66,8 +66,12 @@ class MessageBlock extends WidgetType {
 
   override toDOM(view: EditorView): HTMLElement {
     const { span, severity, message, remedy, fix, path } = this.diagnostic
+    // The editor measures blocks without their margins: the space around the message is padding of a frame.
+    const frame = document.createElement('div')
+    frame.className = 'message-frame'
     const block = document.createElement('div')
     block.className = `message message-${severity}`
+    frame.append(block)
     const says = document.createElement('p')
     const place = document.createElement('b')
     place.textContent = `Line ${span.line}.`
@@ -79,7 +83,7 @@ class MessageBlock extends WidgetType {
     for (const { span: at, note } of path ?? [])
       buttons.append(button(`Line ${at.line}: ${note}`, () => goTo(view, at.start)))
     if (buttons.childElementCount > 0) block.append(buttons)
-    return block
+    return frame
   }
 
   override ignoreEvent(): boolean {

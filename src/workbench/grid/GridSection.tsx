@@ -5,9 +5,9 @@ import { PointName } from '../draft/ReadingSlot'
 import { binaryExponent, SizeValue } from '../marks/Count'
 import { CrossKey, DiscKey, MarkerKey } from '../marks/Marker'
 import { crossPath } from '../marks/shape'
-import { pointWords } from '../store/point-words'
+import { countOf, pointWords } from '../store/point-words'
 import { type PointOutcome, pointOutcome, type Reading, type SweepRecord } from '../store/record'
-import { type Reason, standingOf } from '../store/standing'
+import { type Reason, sentenceOf, standingOf } from '../store/standing'
 import { isStale } from '../store/state'
 import { useWorkbench, useWorkbenchState } from '../use'
 import { type Arrangement, arrange, step } from './arrangement'
@@ -205,16 +205,18 @@ function Mark({ outcome, isNow }: { readonly outcome: PointOutcome; readonly isN
   }
 }
 
-/** Pixels of a column and of a digit in its heading. */
-const COLUMN = 25
+/** Pixels of a column and of a digit in its heading; of the exponents of powers, and of the 2 before them. */
+const COLUMN = 22
 const DIGIT = 7
+const POWER = 20
+const MOST_HEADS = 12
 
 function ColumnHeads({ record, arrangement }: { readonly record: SweepRecord; readonly arrangement: Arrangement }) {
   const heads = record.points.slice(0, arrangement.columns).map(({ n }) => n)
   if (Object.keys(record.points[0]?.sizes ?? {}).length === 0) return null
   const powers = heads.every(n => binaryExponent(n) !== undefined)
-  const widest = Math.max(...heads.map(n => (powers ? 3 : String(n).length))) * DIGIT + 4
-  const every = Math.max(1, Math.ceil(widest / COLUMN), Math.ceil(arrangement.columns / 12))
+  const widest = powers ? POWER : Math.max(...heads.map(n => String(n).length * DIGIT))
+  const every = Math.max(1, Math.ceil((widest + DIGIT) / COLUMN), Math.ceil(arrangement.columns / MOST_HEADS))
   return (
     <div className="points-row points-heads" aria-hidden="true">
       <span className="row-head">
@@ -222,7 +224,13 @@ function ColumnHeads({ record, arrangement }: { readonly record: SweepRecord; re
       </span>
       {heads.map((n, column) => (
         // biome-ignore lint/suspicious/noArrayIndexKey: columns of several sizes may share their first
-        <span key={column}>{column % every === 0 && <SizeValue of={n} />}</span>
+        <span key={column}>
+          {column % every === 0 && (
+            <span>
+              <SizeValue of={n} />
+            </span>
+          )}
+        </span>
       ))}
     </div>
   )
@@ -242,8 +250,8 @@ function Remark({ record, index }: { readonly record: SweepRecord; readonly inde
 
 function remarkOf(result: PointResult | undefined): string {
   if (!result) return 'waiting.'
-  if (result.status === 'refused') return `not run. ${result.reason}`
-  if (result.status === 'failed') return `failed. ${result.reason}`
+  if (result.status === 'refused') return `not run. ${sentenceOf(result.reason)}`
+  if (result.status === 'failed') return `failed. ${sentenceOf(result.reason)}`
   const broken = result.verdicts.filter(({ outcome }) => outcome === 'broken')
   if (broken.length > 0)
     return `broken at ${broken.length === 1 ? 'line' : 'lines'} ${broken.map(({ line }) => line).join(', ')}.`
@@ -257,10 +265,10 @@ function Reasons({ reasons }: { readonly reasons: readonly Reason[] }) {
   if (reasons.length === 0) return null
   return (
     <ul className="reasons" aria-label="Points that are not run">
-      {reasons.slice(0, MOST_REASONS).map(({ reason, count, failed, first }) => (
+      {reasons.slice(0, MOST_REASONS).map(({ reason, count, failed }) => (
         <li key={reason}>
-          <span aria-hidden="true">–</span> {count === 1 ? first : `${count} points`}{' '}
-          {failed ? 'failed' : 'not run'}: {reason}
+          <span aria-hidden="true">–</span> {countOf(count, 'point')} {failed ? 'failed' : 'not run'}:{' '}
+          {sentenceOf(reason)}
         </li>
       ))}
       {reasons.length > MOST_REASONS && (

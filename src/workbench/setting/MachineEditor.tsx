@@ -15,10 +15,10 @@ interface Chip {
 }
 
 const SET_LABELS: Readonly<Record<InstructionSetName, readonly [string, string]>> = {
-  full: ['with multiplication', 'add, logic, shift and multiply on'],
-  'no-multiply': ['without multiplication', 'add, logic and shift on'],
-  'add-only': ['by addition alone', 'add on'],
-  extended: ['with every class', 'divide and bitscan on as well'],
+  full: ['with multiplication', 'add, logic, shift, multiply'],
+  'no-multiply': ['without multiplication', 'add, logic, shift'],
+  'add-only': ['by addition alone', 'add'],
+  extended: ['with every class', 'divide and bitscan too'],
 }
 
 /** Word widths and instruction sets. */

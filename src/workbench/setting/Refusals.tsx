@@ -1,5 +1,6 @@
 import { refuseClasses } from '../../machine'
 import type { InstructionSet } from '../../machine/machine'
+import { sentenceOf } from '../store/standing'
 import { useWorkbenchState } from '../use'
 
 /** What the routine uses and the picked sets lack: it is refused there, at its line. */
@@ -12,7 +13,7 @@ export function Refusals({ sets }: { readonly sets: readonly InstructionSet[] })
     <ul className="remarks">
       {refused.map(({ set, first }) => (
         <li key={set.name}>
-          {program.routine.name} is refused under {set.name}, line {first?.span.line}: {first?.message}
+          <code>{program.routine.name}</code> is not run there: {first && sentenceOf(first.message)}
         </li>
       ))}
     </ul>

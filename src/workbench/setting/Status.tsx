@@ -1,5 +1,5 @@
 import { countOf } from '../store/point-words'
-import { durationWords, type Standing, standingOf } from '../store/standing'
+import { durationWords, type Standing, sentenceOf, standingOf } from '../store/standing'
 import { isStale, type WorkbenchState } from '../store/state'
 import { obstacle } from '../store/sweeping'
 import { useWorkbench, useWorkbenchState } from '../use'
@@ -80,8 +80,8 @@ function detail({ reasons, points, settled }: Standing, { status, crash, elapsed
   if (status === 'crashed') return `A fault of this page's, not of the draft: ${crash}`
   const [first, ...others] = reasons
   if (first) {
-    const where = first.count === 1 ? `At ${first.first}` : `At ${first.count} points, first ${first.first}`
-    return `${where}: ${first.reason}${others.length > 0 ? ' More below the grid.' : ''}`
+    const how = first.failed ? 'failed' : first.count === 1 ? 'is not run' : 'are not run'
+    return `${countOf(first.count, 'point')} ${how}: ${sentenceOf(first.reason)}${others.length > 0 ? ' More below the grid.' : ''}`
   }
   if (status === 'running') return `${durationWords(elapsed)} so far.`
   if (status === 'cancelled') return `${countOf(points - settled, 'point')} were not reached.`

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import type { Setting } from '../../sweep/setting'
 import type { RoutineShape, SettingField, SettingProblem, SettingText } from '../store/setting-text'
+import { sentenceOf } from '../store/standing'
 import type { SlotName } from './Sentence'
 
 /** What every editor of the setting takes. */
@@ -42,13 +43,9 @@ export function Problem(props: { readonly problems: readonly SettingProblem[]; r
     <p className="problem" id={problemId(props.field)} aria-live="polite">
       {found && (
         <>
-          <b>{sentenceCase(found.problem)}.</b> {sentenceCase(found.remedy)}.
+          <b>{sentenceOf(found.problem)}</b> {sentenceOf(found.remedy)}
         </>
       )}
     </p>
   )
-}
-
-function sentenceCase(text: string): string {
-  return text.slice(0, 1).toUpperCase() + text.slice(1)
 }

@@ -5,9 +5,9 @@ import type { SettingText } from './setting-text'
 export const DEMO_DRAFT: Draft = {
   file: 'fennick.tally',
   routine: undefined,
-  text: `# Fennick estuary. A reading is one word: level,
-# minute of day, gauge, from the high bits down.
-# Sorted by digits of k bits, the lowest first.
+  text: `# Fennick estuary, a reading a word: level,
+# minute of day, gauge from the top down.
+# Sorted by digits of k bits, lowest first.
 routine bylevel
   inout a[n]
   let   k = 8
@@ -50,8 +50,8 @@ begin
   end
 end
 
-# Readings brought to the estuary's datum: times
-# 4/5, in fixed point. This needs a multiplier.
+# The same readings at the datum: times 4/5
+# in fixed point, which wants a multiplier.
 routine todatum
   inout a[n]
   fix   m = floor(2^w * 4 / 5)

@@ -4,8 +4,17 @@ import type { Reading, SweepRecord } from './record'
 
 /** What stands beside a line of the draft. */
 export type MarginCell =
-  /** `time` is the line's operations at their charges; `share` of the routine's time, from 0 to 1. */
-  | { readonly line: number; readonly kind: 'time'; readonly time: Count; readonly share: number }
+  /**
+   * `time` is the line's operations at their charges; `share` of the routine's time and `bar` of the costliest line's,
+   * both from 0 to 1.
+   */
+  | {
+      readonly line: number
+      readonly kind: 'time'
+      readonly time: Count
+      readonly share: number
+      readonly bar: number
+    }
   | { readonly line: number; readonly kind: 'total'; readonly time: Count }
   /** Of a claim, check or need over all points so far. */
   | { readonly line: number; readonly kind: 'verdict'; readonly word: VerdictWord }
@@ -19,8 +28,11 @@ export function marginCells(record: SweepRecord, reading: Reading | undefined): 
   const tally = result?.status === 'done' ? result.trials[reading?.trial ?? 0]?.tally : undefined
   if (tally) {
     const { time, byLine } = weighTally(tally, record.setting.charges)
-    for (const { line, time: own } of byLine)
-      cells.set(line, { line, kind: 'time', time: own, share: time > 0 ? Number(own) / Number(time) : 0 })
+    const most = Math.max(1, ...byLine.map(each => Number(each.time)))
+    for (const { line, time: own } of byLine) {
+      const share = time > 0 ? Number(own) / Number(time) : 0
+      cells.set(line, { line, kind: 'time', time: own, share, bar: Number(own) / most })
+    }
     const { line } = record.program.routine.tree.span
     cells.set(line, { line, kind: 'total', time })
   }

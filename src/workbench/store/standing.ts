@@ -1,4 +1,3 @@
-import { pointWords } from './point-words'
 import type { SweepRecord } from './record'
 
 /** How far a sweep is, in numbers. */
@@ -18,8 +17,6 @@ export interface Reason {
   readonly reason: string
   readonly line?: number
   readonly failed: boolean
-  /** The first point it is given at, in words. */
-  readonly first: string
   readonly count: number
 }
 
@@ -41,7 +38,6 @@ export function standingOf(record: SweepRecord): Standing {
       reason,
       ...(line !== undefined && { line }),
       failed: status === 'failed',
-      first: known?.first ?? pointWords(result.point),
       count: (known?.count ?? 0) + 1,
     })
   }
@@ -54,6 +50,12 @@ export function standingOf(record: SweepRecord): Standing {
     failed,
     reasons: [...reasons.values()],
   }
+}
+
+/** A text as a sentence: a capital first, unless a name of one letter stands there, and a full stop. */
+export function sentenceOf(text: string): string {
+  const first = /^\S\s/.test(text) ? text.slice(0, 1) : text.slice(0, 1).toUpperCase()
+  return /[.!?]$/.test(text) ? first + text.slice(1) : `${first}${text.slice(1)}.`
 }
 
 /** Milliseconds as a reader takes them: `320 ms`, `2.4 s`, `3 min 5 s`. Time of this machine, never of the routine's. */
