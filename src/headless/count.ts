@@ -1,6 +1,6 @@
 import { feedInput, readData, readInput, sizesOfData, trialSeed } from '../feed'
 import { INSTRUCTION_SETS, judgeRun, refuseClasses, tallyRun } from '../machine'
-import { bindPoint, type GridPoint, gridPoints, runBinding, type Setting } from '../sweep'
+import { bindPoint, type GridPoint, gridPoints, memoryProblem, runBinding, type Setting } from '../sweep'
 import { type CountReport, writeCountJson } from './count-json'
 import { writeCountText } from './count-text'
 import type { Arguments, Flag } from './flags'
@@ -42,7 +42,9 @@ export async function count(given: Arguments, terminal: Terminal): Promise<Exit>
   const fed = data
     ? takeData(data.file, readInput(data.data, binding, seed))
     : takeData(source.file, feedInput(binding, setting.pattern, seed))
-  const result = await runBinding(binding, fed.input, way ? { way } : {})
+  const options = way ? { way } : {}
+  const result = await runBinding(binding, fed.input, options).catch(error => memoryProblem(error, binding))
+  if ('problem' in result) throw new Leave(EXIT.usage, sayAt(source.file, undefined, result.problem))
   if (!result.ok) throw new Leave(EXIT.failed, sayFailure(source.file, result.failure))
   const tally = tallyRun(binding, result)
   const verdicts = judgeRun(binding, fed.input, result, tally, setting.charges)

@@ -55,6 +55,15 @@ export async function runBinding(binding: Binding, input: Input, options: PointO
   return (await moduleOf(binding.program, width)).run(binding, input, limits)
 }
 
+/**
+ * The problem behind an exception where this computer, not the limits, has too little memory for a run; throws whatever
+ * is something else.
+ */
+export function memoryProblem(error: unknown, { words }: Binding): { problem: string } {
+  if (!(error instanceof RangeError) || /call stack/.test(error.message)) throw error
+  return { problem: `this computer has no memory for the ${words} words of the run: ${error.message}` }
+}
+
 /** Binds a program to a point of a setting, or says why the point is not run. */
 export function bindPoint(
   program: Program,
@@ -96,7 +105,8 @@ export async function runPoint(
     const seed = trialSeed(setting.seed, point, trial)
     const fed = feedInput(binding, setting.pattern, seed)
     if ('problem' in fed) return { status: 'refused', point, reason: fed.problem }
-    const result = await runBinding(binding, fed.input, options)
+    const result = await runBinding(binding, fed.input, options).catch(error => memoryProblem(error, binding))
+    if ('problem' in result) return { status: 'refused', point, reason: result.problem }
     if (!result.ok) {
       const { message, span } = result.failure
       return { status: 'failed', point, reason: message, line: span.line, seed }
