@@ -118,6 +118,8 @@ function bind(program: Program, point: Point, limits: Limits): Binding {
         return fits(constant.value, `the constant on line ${constant.span.line}`, constant.span)
       case 'width':
         return fits(BigInt(width), 'w')
+      case 'exact':
+        return fits(whole(constant.value, constant.name), constant.name, constant.span)
       case 'address': {
         const { name } = routine.arrays[constant.array]!
         return fits(BigInt(arrays[constant.array]!.base), `addr(${name})`, constant.span)

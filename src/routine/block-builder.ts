@@ -149,7 +149,7 @@ export class BlockBuilder {
     const blocks = order.map(
       (draft): Block => ({
         operations: draft.operations,
-        terminator: retarget(draft.terminator!, renumber),
+        terminator: retargetTerminator(draft.terminator!, renumber),
         costs: [...draft.costs.values()] satisfies Cost[],
         line: draft.line,
       }),
@@ -198,7 +198,8 @@ export function successors(terminator: Terminator): readonly number[] {
   }
 }
 
-function retarget(terminator: Terminator, renumber: (id: number) => number): Terminator {
+/** The terminator with its blocks renumbered. */
+export function retargetTerminator(terminator: Terminator, renumber: (id: number) => number): Terminator {
   switch (terminator.kind) {
     case 'jump':
       return { ...terminator, to: renumber(terminator.to) }

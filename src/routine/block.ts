@@ -1,5 +1,5 @@
 import type { Span } from '../../grammar/span'
-import type { Comparison, ExactCondition } from '../../grammar/tree'
+import type { Comparison, Exact, ExactCondition } from '../../grammar/tree'
 
 /** The classes of unit operations, in the order in which tallies list them. */
 export const OPERATION_CLASSES = [
@@ -25,6 +25,8 @@ export interface Cost {
   readonly class: ChargedClass
   readonly line: number
   readonly count: number
+  /** Of a cost inside an expansion: the class that is off and that it stands in for. */
+  readonly expanded?: OperationClass
 }
 
 /** A word that an operation reads: a variable of the procedure, or an entry of the program's constants. */
@@ -181,6 +183,8 @@ export type Constant =
   | { readonly kind: 'literal'; readonly value: bigint; readonly span: Span }
   | { readonly kind: 'width' }
   | { readonly kind: 'size' | 'let' | 'fix'; readonly name: string; readonly span: Span }
+  /** An exact expression over `w` alone. */
+  | { readonly kind: 'exact'; readonly name: string; readonly value: Exact; readonly span: Span }
   /** The address of an array's first word. */
   | { readonly kind: 'address'; readonly array: number; readonly span: Span }
 

@@ -1,4 +1,6 @@
 export * from './block'
+export { retargetTerminator, successors } from './block-builder'
+export { markCheckpoints } from './checkpoint'
 export { ceilWhole, evaluateExact, holdsExact, meetsBound, wholeNumber } from './exact'
 export { compileCondition, compileExact, type Scope } from './exact-compile'
 export { nearestDouble, quotientDouble } from './exact-double'
