@@ -2,7 +2,7 @@ import { StrictMode } from 'react'
 import { createRoot } from 'react-dom/client'
 import { readProgram } from '../routine'
 import { downloadText } from './download'
-import type { Drawer } from './store/keeping'
+import { type Drawer, KEPT_KEY } from './store/keeping'
 import { isDemo } from './store/kept-state'
 import { resolveTheme } from './store/theme'
 import { createWorkbench } from './store/workbench'
@@ -46,6 +46,10 @@ document.addEventListener('visibilitychange', () => {
   if (document.visibilityState === 'hidden') workbench.keepNow()
 })
 window.addEventListener('pagehide', () => workbench.keepNow())
+// Comes from other windows alone.
+window.addEventListener('storage', ({ key }) => {
+  if (key === KEPT_KEY) workbench.hearOther()
+})
 workbench.store.subscribe(({ theme, systemIsDark }) => {
   document.documentElement.dataset.theme = resolveTheme(theme, systemIsDark)
 })

@@ -10,6 +10,8 @@ import type { World } from './world'
 export interface Keeping {
   /** Writes down what has changed, now rather than a moment later: the page is about to go. */
   keepNow(): void
+  /** Another window of this browser has kept its draft over this one's. */
+  hearOther(): void
 }
 
 interface Board {
@@ -24,6 +26,13 @@ const NOT_KEPT: Notice = {
   key: 'not kept',
   tone: 'trouble',
   text: 'This browser keeps nothing for the page: the draft would be gone after a reload. Save it as a file.',
+  actions: [],
+}
+
+const OTHER: Notice = {
+  key: 'other window',
+  tone: 'plain',
+  text: 'Another window of this browser has the page open too. A reload brings the draft that was changed last; save this one as a file to be sure of it.',
   actions: [],
 }
 
@@ -96,7 +105,7 @@ export function keepingOf(store: StoreApi<WorkbenchState>, world: World, board: 
     clearTimeout(due)
     due = setTimeout(keepNow, REST)
   })
-  return { keepNow }
+  return { keepNow, hearOther: () => board.notify(OTHER) }
 }
 
 /** The draft and setting are still the demo's, so that a first visit may run it unasked. */

@@ -40,23 +40,31 @@ export function marginCells(record: SweepRecord, reading: Reading | undefined): 
   return [...cells.values()].sort((a, b) => a.line - b.line)
 }
 
+/** Worse comes later: a line shows the worst of its points. */
+const ORDER: readonly Verdict['outcome'][] = ['holds', 'undecided', 'broken']
+
 function verdictWords(record: SweepRecord): Map<number, VerdictWord> {
-  const { routine } = record.program
+  const { needs } = record.program.routine
   const words = new Map<number, VerdictWord>()
-  const holds: VerdictWord = record.status === 'done' ? 'holds' : 'so far'
-  const counted = record.results.some(result => result?.status === 'done')
-  for (const { span } of routine.needs) if (counted) words.set(span.line, holds)
-  const verdicts = new Map<number, Verdict['outcome'][]>()
+  const worst = new Map<number, number>()
+  const failing = new Set<number>()
+  let counted = false
   for (const result of record.results) {
-    if (result?.status === 'done')
-      for (const { line, outcome } of result.verdicts) verdicts.set(line, [...(verdicts.get(line) ?? []), outcome])
-    // A need that a point fails is no fault: that point is not run. Only where no point is left does it fail.
-    else if (result?.status === 'refused' && result.line !== undefined && !counted)
-      if (routine.needs.some(({ span }) => span.line === result.line)) words.set(result.line, 'fails')
+    if (result?.status === 'refused' && result.line !== undefined) failing.add(result.line)
+    if (result?.status !== 'done') continue
+    counted = true
+    for (const { line, outcome } of result.verdicts)
+      worst.set(line, Math.max(worst.get(line) ?? 0, ORDER.indexOf(outcome)))
   }
-  for (const [line, outcomes] of verdicts) {
-    if (outcomes.includes('broken')) words.set(line, 'broken')
-    else words.set(line, outcomes.includes('undecided') ? 'undecided' : holds)
+  const holds: VerdictWord = record.status === 'done' ? 'holds' : 'so far'
+  for (const { span } of needs) {
+    // A need that a point fails is no fault: that point is not run. It fails where no point is left.
+    if (counted) words.set(span.line, holds)
+    else if (failing.has(span.line)) words.set(span.line, 'fails')
+  }
+  for (const [line, place] of worst) {
+    const outcome = ORDER[place]
+    words.set(line, outcome === 'holds' || outcome === undefined ? holds : outcome)
   }
   return words
 }
