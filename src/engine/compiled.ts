@@ -56,7 +56,7 @@ export class CompiledProgram {
    * are not for this program, a RangeError where memory cannot be had.
    */
   run(binding: Binding, input: Input, limits: Limits): RunResult {
-    if (binding.program !== this.program || binding.point.width !== this.width)
+    if (!this.compiledFor(binding.program) || binding.point.width !== this.width)
       throw new Error('the binding is of another program or width than this was compiled for')
     checkWords(binding, input)
     const work = workWords(binding)
@@ -69,6 +69,15 @@ export class CompiledProgram {
     const result = this.marked.run(binding, input, limits)
     if (result.ok) this.sparse = result.touched < work
     return result
+  }
+
+  /** Whether this is the program, or the same routine of the same text lowered once more. */
+  private compiledFor(program: Program): boolean {
+    if (program === this.program) return true
+    const [given, own] = [program.routine, this.program.routine]
+    return (
+      given.text === own.text && given.name === own.name && program.blocks.length === this.program.blocks.length
+    )
   }
 }
 

@@ -138,11 +138,12 @@ function cutBlock(seed: number, width: number): NarrowArray {
 /** Sum of the marks, each 0 or 1, of `length` bytes. */
 export function countMarks(memory: WebAssembly.Memory, at: number, length: number): number {
   const marks = new Uint8Array(memory.buffer, at, length)
-  const lead = Math.min((4 - (at % 4)) % 4, length)
-  const fours = (length - lead) >> 2
+  const lead = (4 - (at % 4)) % 4
+  const fours = Math.max(0, (length - lead) >> 2)
   let sum = 0
-  for (let byte = 0; byte < lead; byte++) sum += marks[byte]!
+  for (let byte = 0; byte < Math.min(lead, length); byte++) sum += marks[byte]!
   for (let byte = lead + fours * 4; byte < length; byte++) sum += marks[byte]!
+  if (fours === 0) return sum
   // Four marks at a time, each in a byte of its own that up to 255 of them fit.
   const wide = new Uint32Array(memory.buffer, at + lead, fours)
   for (let start = 0; start < fours; start += 255) {

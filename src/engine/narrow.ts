@@ -1,5 +1,6 @@
 import type { Comparison } from '../../grammar/tree'
 import type { BinaryFunction, Constant, Operand, UnaryFunction } from '../routine'
+import type { Bounds } from './bounds'
 import type { CodeBuilder, LocalPool } from './code'
 import { I32, I32_OPS, I64, I64_OPS, OP, type WordOpcodes } from './opcode'
 import type { RunLayout, SlotTable } from './slots'
@@ -23,6 +24,7 @@ export class NarrowWords implements WordCode {
     private readonly code: CodeBuilder,
     private readonly pool: LocalPool,
     private readonly slots: SlotTable,
+    private readonly bounds: Bounds,
   ) {
     this.bits = width <= 32 ? 32 : 64
     this.ops = width <= 32 ? I32_OPS : I64_OPS
@@ -43,7 +45,7 @@ export class NarrowWords implements WordCode {
       this.push(left)
       this.push(right)
       this.code.op(this.ops[BINARY_OPCODE[name]])
-      if (name === 'add' || name === 'subtract' || name === 'multiply') this.mask()
+      if (this.outgrows(name, left, right)) this.mask()
     }
     this.set(into)
   }
@@ -344,6 +346,21 @@ export class NarrowWords implements WordCode {
     this.set(low)
   }
 
+  /** Whether a result may have bits past the word. */
+  private outgrows(name: BinaryFunction, left: Operand, right: Operand): boolean {
+    if (this.width === this.bits) return false
+    switch (name) {
+      case 'subtract':
+        return true
+      case 'add':
+        return this.bounds.most(left) + this.bounds.most(right) > this.ones
+      case 'multiply':
+        return this.bounds.most(left) * this.bounds.most(right) > this.ones
+      default:
+        return false
+    }
+  }
+
   private shift(left: boolean, value: Operand, amount: Operand): void {
     const { code, ops } = this
     const known = this.known(amount)
@@ -356,7 +373,7 @@ export class NarrowWords implements WordCode {
     code.op(left ? ops.shl : ops.shrU)
     // The machine shifts by the amount modulo 32 or 64; between w and that, nothing of the word is left but what the
     // mask takes.
-    if (known === undefined && this.ones >= BigInt(this.bits)) {
+    if (known === undefined && this.bounds.most(amount) >= BigInt(this.bits)) {
       this.constant(0n)
       this.push(amount)
       this.constant(BigInt(this.bits))

@@ -1,4 +1,5 @@
 import type { Program } from '../routine'
+import { Bounds } from './bounds'
 import { CodeBuilder, LocalPool } from './code'
 import { CountPlan } from './count'
 import { countLoops } from './counted'
@@ -57,8 +58,9 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
   const pool = new LocalPool()
   const slots = new SlotTable(pool)
   const head = mostHeadBytes(program, counts.counters)
-  const words = new NarrowWords(width, program.constants, graph.variables, code, pool, slots)
-  const steps = new StepCode(program, graph, words, code, pool, slots, head, marked)
+  const bounds = new Bounds(program, graph, order, width)
+  const words = new NarrowWords(width, program.constants, graph.variables, code, pool, slots, bounds)
+  const steps = new StepCode(program, graph, words, code, pool, slots, bounds, head, marked)
   for (const { name, role } of program.routine.scalars) {
     if (role === 'out') continue
     const variable = program.procedures[0]!.variables.findIndex(variable => variable.name === name)
@@ -76,7 +78,7 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
   let peakSlot: number | undefined
   emitStructure(graph, order, loops, code, {
     steps: node => {
-      for (const step of graph.nodes[node]!.steps) steps.emit(step)
+      for (const place of graph.nodes[node]!.steps.keys()) steps.emit(node, place)
     },
     test: end => steps.pushTest(end.test, end.shift),
     past: end => steps.pushPast(end.loop),

@@ -1,4 +1,5 @@
 import type { Operand, Operation, Program, Terminator } from '../routine'
+import type { Bounds } from './bounds'
 import type { CodeBuilder, LocalPool } from './code'
 import type { CountedLoop } from './counted'
 import { type FailureSite, FailureSites } from './failure-site'
@@ -32,6 +33,7 @@ export class StepCode {
     private readonly code: CodeBuilder,
     private readonly pool: LocalPool,
     private readonly slots: SlotTable,
+    private readonly bounds: Bounds,
     /** Bytes from address 0 of the module's memory to the first word. */
     private readonly head: number,
     /** Whether stores to work memory are marked. */
@@ -47,12 +49,16 @@ export class StepCode {
     }
   }
 
-  emit(step: Step): void {
+  emit(node: number, place: number): void {
+    const step = this.graph.nodes[node]!.steps[place]!
     switch (step.kind) {
       case 'block': {
         const { operations, checkpoint } = this.program.blocks[step.block]!
         if (checkpoint !== undefined && !step.charged) this.checkpoint(step.block, checkpoint)
-        for (const operation of operations) this.operation(operation, step.shift, step.block)
+        for (const [at, operation] of operations.entries()) {
+          this.bounds.moveTo(node, place, at)
+          this.operation(operation, step.shift, step.block)
+        }
         break
       }
       case 'copy':
