@@ -2,7 +2,7 @@ import { printBounds, printCondition, printExact, printWord, printWordCondition 
 import type { Comment, Declaration, ProcedureTree, RoutineTree, Statement } from './tree'
 
 /** Targets up to this long stand in a column with their arrows one below another; longer ones would tear it apart. */
-const COLUMN = 4
+const COLUMN = 2
 /** Tables break before it. */
 const WIDEST = 100
 
@@ -94,7 +94,7 @@ class Printer {
       if (declaration.kind === 'procedure') this.procedure(declaration, 2)
       else {
         const word = words[at]!.padEnd(width)
-        for (const text of wrapList(`${word} ${printDeclaration(declaration, measure)}`))
+        for (const text of wrap(`${word} ${printDeclaration(declaration, measure)}`))
           this.set(declaration.span.line, 2, text)
       }
     }
@@ -223,17 +223,26 @@ function printDeclaration(declaration: Declaration, measure: number): string {
   }
 }
 
-/** Breaks a long list after commas; the notation lets a line that ends in one go on. */
-function wrapList(text: string): string[] {
+/** Where a declaration may break: after what joins the parts of a list or a condition, and leads into the next line. */
+const BREAKS = /(?<=, | and | or | : )/
+
+/** Breaks a long declaration outside of brackets; the notation lets a line that ends so go on. */
+function wrap(text: string): string[] {
   if (text.length <= WIDEST) return [text]
   const lines: string[] = []
   let line = ''
-  for (const part of text.split(/(?<=, )/)) {
+  let open = 0
+  let part = ''
+  for (const piece of text.split(BREAKS)) {
+    part += piece
+    for (const sign of piece) open += sign === '(' || sign === '[' ? 1 : sign === ')' || sign === ']' ? -1 : 0
+    if (open > 0) continue
     if (line !== '' && line.length + part.length > WIDEST) {
       lines.push(line.trimEnd())
       line = '    '
     }
     line += part
+    part = ''
   }
   return [...lines, line.trimEnd()]
 }

@@ -1,7 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
 import {
-
   parseCondition,
   parseExact,
   parseText,

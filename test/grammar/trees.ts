@@ -17,8 +17,40 @@ import type {
 const span: Span = { start: 0, end: 0, line: 0, column: 1 }
 
 /** Among them words that mean something elsewhere. */
-const NAMES = ['x', 'y', 'i', 'n', 'w', 'lo', 'count', "x'", 'α', 'x₁', 'to', 'in', 'out', 'sum', 'all', 'then', 'do']
-const MORE_NAMES = ['by', 'from', 'time', 'space', 'distinct', 'check', 'need', 'let', 'fix', 'feed', 'work', 'max', 'lg']
+const NAMES = [
+  'x',
+  'y',
+  'i',
+  'n',
+  'w',
+  'lo',
+  'count',
+  "x'",
+  'α',
+  'x₁',
+  'to',
+  'in',
+  'out',
+  'sum',
+  'all',
+  'then',
+  'do',
+]
+const MORE_NAMES = [
+  'by',
+  'from',
+  'time',
+  'space',
+  'distinct',
+  'check',
+  'need',
+  'let',
+  'fix',
+  'feed',
+  'work',
+  'max',
+  'lg',
+]
 const PROCEDURES = ['f', 'merge', 'sum', 'check', 'min']
 
 const name: fc.Arbitrary<Name> = fc.constantFrom(...NAMES, ...MORE_NAMES).map(text => ({ text, span }))
@@ -33,13 +65,18 @@ const wordNumber: fc.Arbitrary<WordExpression> = fc.oneof(
 )
 
 const exactNumber: fc.Arbitrary<Exact> = fc.oneof(
-  fc.bigInt({ min: 0n, max: 1n << 80n }).map(numerator => ({ kind: 'number', numerator, denominator: 1n, span }) as const),
+  fc
+    .bigInt({ min: 0n, max: 1n << 80n })
+    .map(numerator => ({ kind: 'number', numerator, denominator: 1n, span }) as const),
   fc
     .bigInt({ min: 0n, max: 1n << 20n })
-    .map(value => ({ kind: 'number', numerator: value, denominator: 1n, written: `0b${value.toString(2)}`, span }) as const),
-  fc.constantFrom([1n, 2n], [5n, 4n], [7n, 1000n], [123n, 125n]).map(
-    ([numerator, denominator]) => ({ kind: 'number', numerator, denominator, span }) as Exact,
-  ),
+    .map(
+      value =>
+        ({ kind: 'number', numerator: value, denominator: 1n, written: `0b${value.toString(2)}`, span }) as const,
+    ),
+  fc
+    .constantFrom([1n, 2n], [5n, 4n], [7n, 1000n], [123n, 125n])
+    .map(([numerator, denominator]) => ({ kind: 'number', numerator, denominator, span }) as Exact),
 )
 
 export const exact: fc.Arbitrary<Exact> = fc.letrec<{ exact: Exact }>(tie => {
@@ -177,7 +214,14 @@ const statement: fc.Arbitrary<Statement> = fc.letrec<{ statement: Statement; bod
     statement: fc.oneof(
       { maxDepth: 3, depthIdentifier: 'statement' },
       fc.record({ kind: fc.constant('assign' as const), target, value: word, span: at }),
-      fc.record({ kind: fc.constant('product' as const), high: target, low: target, left: word, right: word, span: at }),
+      fc.record({
+        kind: fc.constant('product' as const),
+        high: target,
+        low: target,
+        left: word,
+        right: word,
+        span: at,
+      }),
       fc.record({
         kind: fc.constant('call' as const),
         results: fc.array(target, { maxLength: 3 }),
@@ -253,7 +297,15 @@ const declaration = fc.oneof(
     span: at,
   }),
   // `t[sum in in .. 3]` can be read in two ways.
-  fc.record({ kind: fc.constant('formula'), name, index: name.filter(({ text }) => text !== 'sum' && text !== 'all'), from: exact, to: exact, value: exact, span: at }),
+  fc.record({
+    kind: fc.constant('formula'),
+    name,
+    index: name.filter(({ text }) => text !== 'sum' && text !== 'all'),
+    from: exact,
+    to: exact,
+    value: exact,
+    span: at,
+  }),
   fc.record({ kind: fc.constantFrom('need', 'check'), condition, span: at }),
   fc.record(
     { kind: fc.constant('feed-range'), name, index: name, from: exact, to: exact, span: at },
@@ -275,7 +327,9 @@ export const routine: fc.Arbitrary<RoutineTree> = fc.record({
   declarations: fc.array(fc.oneof({ weight: 6, arbitrary: declaration }, { weight: 1, arbitrary: procedure }), {
     maxLength: 6,
   }),
-  body: fc.array(fc.oneof({ weight: 9, arbitrary: statement }, { weight: 1, arbitrary: procedure }), { maxLength: 8 }),
+  body: fc.array(fc.oneof({ weight: 9, arbitrary: statement }, { weight: 1, arbitrary: procedure }), {
+    maxLength: 8,
+  }),
   begin: at,
   end: at,
   span: at,
