@@ -7,7 +7,7 @@ import { toInput } from '../outside/two-ways'
 import { type RandomRoutine, randomRoutine } from './random-routine'
 
 /** How many routines: few by default, any number by environment for a long run; likewise where the draw starts. */
-const COUNT = Number(process.env.RANDOM_ROUTINES ?? 800)
+const COUNT = Number(process.env.RANDOM_ROUTINES ?? 700)
 const SEED = process.env.RANDOM_SEED === undefined ? {} : { seed: Number(process.env.RANDOM_SEED) }
 
 type Ending = 'good' | 'refused' | string
@@ -41,10 +41,10 @@ test(
     )
     // The draw must reach what it is meant to reach: most routines run to their end, and each way to fail turns up.
     if (COUNT > 1000) console.info(Object.fromEntries(endings))
-    expect(endings.get('good')).toBeGreaterThan(COUNT * 0.4)
+    expect(endings.get('good')).toBeGreaterThan(COUNT * 0.35)
     expect(endings.get('refused') ?? 0).toBeLessThan(COUNT * 0.1)
     expect([...endings.keys()]).toEqual(
-      expect.arrayContaining(['index', 'address', 'divide', 'assert', 'operation-limit']),
+      expect.arrayContaining(['index', 'address', 'divide', 'assert', 'operation-limit', 'frame-limit']),
     )
   },
   COUNT * 100 + 20_000,

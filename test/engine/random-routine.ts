@@ -18,7 +18,7 @@ const width: fc.Arbitrary<number> = fc.oneof(
 
 /** Small limits, so that every run ends soon; those that hit one must do so at the same place both ways. */
 const limits = fc.record({
-  operations: fc.constantFrom(1500, 400, 60, 8),
+  operations: fc.constantFrom(3000, 3000, 1000, 200, 20),
   frames: fc.constantFrom(400, 60, 12),
 })
 
@@ -52,8 +52,12 @@ const shape = fc.record({
   junk: fc.nat(1000),
 })
 
+type Drawn = typeof shape extends fc.Arbitrary<infer T> ? T : never
+
 /** Arbitrary of whole random routines with width, input and limits. Shrinks towards short texts and small words. */
-export const randomRoutine: fc.Arbitrary<RandomRoutine> = shape.map(drawn => {
+export const randomRoutine: fc.Arbitrary<RandomRoutine> = fc.noBias(shape.map(buildRoutine))
+
+function buildRoutine(drawn: Drawn): RandomRoutine {
   const modulus = 1n << BigInt(drawn.width)
   const word = (at: number) => drawn.words[at % drawn.words.length]!(modulus)
   const small = (value: number) => Number(BigInt(value) % modulus)
@@ -146,8 +150,9 @@ export const randomRoutine: fc.Arbitrary<RandomRoutine> = shape.map(drawn => {
     limits: drawn.limits,
   }
   // A shrunk counterexample is to be read, and pasted into a test.
-  return { text, given, [fc.toStringMethod]: () => `\n${text}\nrun with ${fc.stringify(given)}\n` }
-})
+  const routine = { text, given, [fc.toStringMethod]: () => `\n${text}\nrun with ${fc.stringify(given)}\n` }
+  return routine
+}
 
 function counter(): () => number {
   let count = 0

@@ -81,12 +81,16 @@ const UNARY: readonly ((inner: string) => string)[] = [
 
 const plain = fc.oneof({ weight: 3, arbitrary: name }, { weight: 1, arbitrary: literal })
 
+function isReadOnly({ role }: Arrays[number]): boolean {
+  return role === 'in' || role === 'fix'
+}
+
 /** An index: most often one that lies in the array, by a literal or a remainder. */
 function indexInto(word: fc.Arbitrary<Word>): fc.Arbitrary<(length: number) => Word> {
   return fc.oneof(
-    { weight: 6, arbitrary: fc.nat(50).map(at => (length: number) => () => String(at % Math.max(1, length))) },
+    { weight: 8, arbitrary: fc.nat(50).map(at => (length: number) => () => String(at % Math.max(1, length))) },
     {
-      weight: 4,
+      weight: 6,
       arbitrary: word.map(
         inner => (length: number) => (scope: Scope) =>
           `(${inner(scope)}) mod ${Math.max(1, Math.min(length, Number(scope.modulus - 1n)))}`,
@@ -98,8 +102,7 @@ function indexInto(word: fc.Arbitrary<Word>): fc.Arbitrary<(length: number) => W
 
 /** `a[i]` of some array, `p[i]`, `[p]`; a variable where the routine has no array that will do. */
 function access(word: fc.Arbitrary<Word>, stored: boolean): fc.Arbitrary<Word> {
-  const inReach = (scope: Scope) =>
-    scope.arrays.filter(({ role, length }) => length > 0 && !(stored && (role === 'in' || role === 'fix')))
+  const inReach = (scope: Scope) => scope.arrays.filter(array => array.length > 0 && !(stored && isReadOnly(array)))
   const otherwise = (scope: Scope) => pick(stored ? scope.assignable : scope.readable, 0)
   const byName = fc.tuple(fc.nat(20), indexInto(word)).map(
     ([at, index]): Word =>
@@ -110,15 +113,15 @@ function access(word: fc.Arbitrary<Word>, stored: boolean): fc.Arbitrary<Word> {
         return `${chosen.name}[${index(chosen.length)(scope)}]`
       },
   )
-  const byAddress = fc.tuple(fc.nat(20), indexInto(word), fc.nat(3)).map(
+  const byAddress = fc.tuple(fc.nat(20), indexInto(word), fc.nat(12)).map(
     ([at, index, form]): Word =>
       scope => {
         const arrays = inReach(scope)
         if (arrays.length === 0) return otherwise(scope)
         const chosen = pick(arrays, at)
         const offset = index(chosen.length)(scope)
-        if (form === 0) return `[addr(${chosen.name})]`
-        return form === 1 ? `[addr(${chosen.name}) + (${offset})]` : `${pick(scope.assignable, at)}[${offset}]`
+        if (form < 3) return `[addr(${chosen.name})]`
+        return form < 12 ? `[addr(${chosen.name}) + (${offset})]` : `${pick(scope.assignable, at)}[${offset}]`
       },
   )
   const wild = word.map(
@@ -127,8 +130,8 @@ function access(word: fc.Arbitrary<Word>, stored: boolean): fc.Arbitrary<Word> {
         `[${address(scope)}]`,
   )
   return fc.oneof(
-    { weight: 8, arbitrary: byName },
-    { weight: 4, arbitrary: byAddress },
+    { weight: 20, arbitrary: byName },
+    { weight: 8, arbitrary: byAddress },
     { weight: 1, arbitrary: wild },
   )
 }
@@ -267,13 +270,13 @@ const pointed = fc.tuple(fc.nat(20), fc.nat(20), fc.nat(50), fc.boolean(), expre
 /** Halved at each use, so that it reaches 0 and what it guards ends. */
 const burn = 'fuel <- fuel >> 1'
 
-const jump = fc.tuple(fc.nat(20), fc.nat(5), condition).map(
+const jump = fc.tuple(fc.nat(20), fc.nat(9), condition).map(
   ([at, form, test]): Lines =>
     scope => {
       if (scope.labels.length === 0) return assignNothing(scope)
       const label = pick(scope.labels, at)
       if (form === 0) return [`goto ${label}`]
-      if (form === 1) return [`if ${test(scope)} goto ${label}`]
+      if (form < 3) return [`if ${test(scope)} goto ${label}`]
       return [burn, `if fuel != 0 and ${test(scope)} goto ${label}`]
     },
 )
@@ -298,7 +301,7 @@ const call = fc
   )
 
 /** An exact condition over variables, arrays and constants; most of them hold. */
-const assertion = fc.tuple(fc.nat(20), fc.nat(20), fc.nat(7), fc.bigInt({ min: 0n, max: 40n })).map(
+const assertion = fc.tuple(fc.nat(20), fc.nat(20), fc.nat(11), fc.bigInt({ min: 0n, max: 40n })).map(
   ([first, second, form, value]): Lines =>
     scope => {
       const [x, y] = [pick(scope.readable, first), pick(scope.readable, second)]
@@ -315,7 +318,7 @@ const assertion = fc.tuple(fc.nat(20), fc.nat(20), fc.nat(7), fc.bigInt({ min: 0
         // This one often fails.
         `assert ${x} != ${y} or ${x} != ${value}`,
       ]
-      return [forms[form]!]
+      return [forms[Math.min(form, forms.length - 1)]!]
     },
 )
 
@@ -345,7 +348,7 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
     { weight: 1, arbitrary: pointed },
     { weight: 4, arbitrary: jump },
     { weight: 3, arbitrary: call },
-    { weight: 1, arbitrary: assertion },
+    { weight: 2, arbitrary: assertion },
     { weight: 7, arbitrary: tie('form') },
     {
       weight: 1,
@@ -378,7 +381,7 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
     },
     {
       weight: 2,
-      arbitrary: fc.tuple(condition, tie('statements'), fc.nat(5)).map(
+      arbitrary: fc.tuple(condition, tie('statements'), fc.nat(7)).map(
         ([test, body, form]): Lines =>
           scope => [
             form === 0 ? `while ${test(scope)}` : `while fuel != 0 and ${test(scope)}`,
@@ -390,7 +393,7 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
     },
     {
       weight: 1,
-      arbitrary: fc.tuple(condition, tie('statements'), fc.nat(5)).map(
+      arbitrary: fc.tuple(condition, tie('statements'), fc.nat(7)).map(
         ([test, body, form]): Lines =>
           scope => [
             'repeat',
@@ -403,7 +406,7 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
     {
       weight: 3,
       arbitrary: fc
-        .tuple(fc.nat(5), fc.boolean(), bound(), bound(), fc.option(bound(), { freq: 2 }), tie('statements'))
+        .tuple(fc.nat(7), fc.boolean(), bound(), bound(), fc.option(bound(), { freq: 2 }), tie('statements'))
         .map(
           ([near, down, from, to, by, body]): Lines =>
             scope => {
