@@ -115,7 +115,7 @@ function bind(program: Program, point: Point, limits: Limits): Binding {
   const constants = program.constants.map(constant => {
     switch (constant.kind) {
       case 'literal':
-        return fits(constant.value, `the constant on line ${constant.span.line}`, constant.span)
+        return fits(constant.value, `a constant of line ${constant.span.line}`, constant.span)
       case 'width':
         return fits(BigInt(width), 'w')
       case 'exact':
