@@ -1,4 +1,4 @@
-import type { TokenType } from 'chevrotain'
+import type { TokenType } from './chevrotain'
 import { editsFix, replaceFix } from './edits'
 import { type Mark, markSpan } from './lines'
 import type { Notes } from './notes'

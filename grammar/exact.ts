@@ -1,4 +1,4 @@
-import type { TokenType } from 'chevrotain'
+import type { TokenType } from './chevrotain'
 import { correctBang, isComparison, isConditional, readComparison, readJunction, refuseChain } from './condition'
 import { editsFix, replaceFix } from './edits'
 import { type Mark, markSpan } from './lines'

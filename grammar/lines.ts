@@ -1,4 +1,4 @@
-import { type IToken, Lexer } from 'chevrotain'
+import { type IToken, Lexer } from './chevrotain'
 import type { Span } from './span'
 import * as T from './tokens'
 import type { Comment } from './tree'

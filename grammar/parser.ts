@@ -1,5 +1,5 @@
 // biome-ignore-all lint/correctness/noComponentHookFactories: Chevrotain's alternatives (`ALT`) are no components.
-import type { OrMethodOpts } from 'chevrotain'
+import type { OrMethodOpts } from './chevrotain'
 import { type Mark, markSpan } from './lines'
 import type { Phrase } from './phrase'
 import { PhraseParser } from './phrase-parser'

@@ -6,7 +6,7 @@ import {
   type OrMethodOpts,
   type ParserMethod,
   tokenLabel,
-} from 'chevrotain'
+} from './chevrotain'
 import { type Mark, markSpan } from './lines'
 import { arrangeParts, type Part, type Phrase } from './phrase'
 import { joinSpans } from './span'

@@ -1,4 +1,4 @@
-import type { TokenType } from 'chevrotain'
+import type { TokenType } from './chevrotain'
 import { type Mark, markSpan } from './lines'
 import { joinSpans, type Span } from './span'
 import * as T from './tokens'

@@ -1,4 +1,4 @@
-import type { TokenType } from 'chevrotain'
+import type { TokenType } from './chevrotain'
 import { replaceFix } from './edits'
 import { type Line, lineSpan, type Mark, type Stray } from './lines'
 import { explainBreak } from './mistakes'

@@ -1,4 +1,4 @@
-import type { TokenType } from 'chevrotain'
+import type { TokenType } from './chevrotain'
 import { FOREIGN_ENDS, type Line, type Mark } from './lines'
 import * as T from './tokens'
 

@@ -1,4 +1,4 @@
-import { createToken, type ITokenConfig, Lexer, type TokenType } from 'chevrotain'
+import { createToken, type ITokenConfig, Lexer, type TokenType } from './chevrotain'
 
 // Categories. A token of a category is taken wherever the category is asked for.
 

@@ -1,6 +1,6 @@
 /** A point at which an example is run, and what is said of that run. */
 export interface Expectation {
-  /** For titles: the comment's first part. */
+  /** For titles: the entry's first part. */
   readonly title: string
   readonly point: ReadonlyMap<string, string>
   readonly input: ReadonlyMap<string, readonly bigint[]>
@@ -24,39 +24,31 @@ export interface Example {
   readonly layoutFree: boolean
 }
 
-/** The examples of a page's text: blocks fenced as `tally`, each with the comments that follow it. */
+/** The examples of a page's text: blocks fenced as `tally`, each with the block fenced as `run` that follows it. */
 export function readExamples(page: string): Example[] {
-  const block = /^```tally\n([\s\S]*?)^```\n((?:\s*<!--[\s\S]*?-->)*)/gm
-  return [...page.matchAll(block)].map(([, text, tail], at) => {
-    const comments = [...tail!.matchAll(/<!--([\s\S]*?)-->/g)].map(([, comment]) =>
-      comment!.replace(/\s+/g, ' ').trim(),
-    )
-    const start = [...page.matchAll(block)][at]!.index
-    const line = page.slice(0, start).split('\n').length
-    const error = comments
-      .find(comment => comment.startsWith('error:'))
+  const block = /^```tally\n([\s\S]*?)^```\n\n(<!-- layout free -->\n\n)?(?:```run\n([\s\S]*?)^```\n)?/gm
+  return [...page.matchAll(block)].map(({ 0: whole, 1: text, 2: free, 3: runs, index }) => {
+    const line = page.slice(0, index).split('\n').length
+    if (runs === undefined) throw new Error(`line ${line}: no runs stand below this example: ${whole}`)
+    const entries = runs.replace(/\n +/g, ' ').trim().split('\n')
+    const error = entries
+      .find(entry => entry.startsWith('error:'))
       ?.slice('error:'.length)
       .trim()
-    for (const comment of comments)
-      if (!/^(?:counts |error:|layout free$)/.test(comment))
-        throw new Error(`line ${line}: unknown comment: ${comment}`)
     return {
       text: text!,
       line,
-      expectations: comments.filter(comment => comment.startsWith('counts ')).map(readExpectation),
+      expectations: entries.filter(entry => !entry.startsWith('error:')).map(readExpectation),
       ...(error !== undefined && { error }),
-      layoutFree: comments.includes('layout free'),
+      layoutFree: free !== undefined,
     }
   })
 }
 
 const CLASS_LIST = /^(?:add|logic|shift|multiply|divide|bitscan|load|store|move|compare|jump|call) /
 
-function readExpectation(comment: string): Expectation {
-  const [head, ...clauses] = comment
-    .slice('counts '.length)
-    .split(';')
-    .map(clause => clause.trim())
+function readExpectation(entry: string): Expectation {
+  const [head, ...clauses] = entry.split(';').map(clause => clause.trim())
   const expectation = {
     title: head!,
     point: new Map(head!.split(' ').map(pair => pair.split('=') as [string, string])),

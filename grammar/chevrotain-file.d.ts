@@ -1,0 +1,3 @@
+declare module '*/chevrotain/lib/chevrotain.mjs' {
+  export * from 'chevrotain'
+}
