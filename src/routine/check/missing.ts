@@ -1,0 +1,164 @@
+import type { Span } from '../../../grammar/span'
+import type { Name } from '../../../grammar/tree'
+import { nearestName } from '../names'
+import type { Declared } from './declared'
+import type { Declaring } from './declaring'
+import type { Report } from './report'
+import type { VariableScope } from './scope'
+
+/** How an array that nobody declared is used. */
+export type Use = 'load' | 'store' | 'read'
+
+interface MissingArray {
+  readonly places: Span[]
+  /** The first use in the text decides between `out`, `inout`, `work` and `in`. */
+  readonly uses: Use[]
+  readonly scope: VariableScope | undefined
+}
+
+interface MissingWord {
+  readonly name: string
+  readonly places: Span[]
+  readonly scope: VariableScope | undefined
+  /** Whether word code reads it; otherwise declarations alone do. */
+  readonly inCode: boolean
+}
+
+/**
+ * Gathers names that stand for nothing, so that each is reported once and together with what it follows from: a draft
+ * that lacks `in a[n]` lacks both `a` and `n`, and one line makes up for both.
+ */
+export class Missing {
+  private readonly arrays = new Map<string, MissingArray>()
+  private readonly words = new Map<string, MissingWord>()
+
+  constructor(
+    private readonly report: Report,
+    private readonly declared: Declared,
+    private readonly declaring: Declaring,
+    private readonly scopes: readonly VariableScope[],
+  ) {}
+
+  array({ text, span }: Name, use: Use, scope: VariableScope | undefined): void {
+    if (this.report.mayBeLost(text)) return
+    const known = this.arrays.get(text) ?? { places: [], uses: [], scope }
+    known.places.push(span)
+    known.uses.push(use)
+    this.arrays.set(text, known)
+  }
+
+  word({ text, span }: Name, scope: VariableScope | undefined, inCode: boolean): void {
+    if (this.report.mayBeLost(text)) return
+    const key = `${scope?.procedure?.name.text ?? ''} ${text}`
+    const known = this.words.get(key) ?? { name: text, places: [], scope, inCode }
+    known.places.push(span)
+    this.words.set(key, known)
+  }
+
+  /** Reports what was gathered. */
+  tell(): void {
+    const size = this.lengthName()
+    let sized = false
+    for (const [name, missing] of this.arrays) {
+      const role = roleOf(missing.uses)
+      if (this.tellArray(name, missing, size, role) && role !== 'work') sized = true
+    }
+    for (const missing of this.words.values()) {
+      if (this.arrays.has(missing.name)) continue
+      if (sized && missing.name === size) continue
+      this.tellWord(missing)
+    }
+  }
+
+  /** The name that the length of a missing array most likely has. */
+  private lengthName(): string {
+    const sizes = this.declared.names(meaning => meaning.kind === 'size')
+    const unknown = [...this.words.values()]
+      .filter(({ name, scope }) => !this.arrays.has(name) && !this.nearTo(name, scope))
+      .map(({ name }) => name)
+    if (unknown.includes('n')) return 'n'
+    return unknown[0] ?? sizes[0] ?? 'n'
+  }
+
+  /** Reports an array; true where the remedy is a declaration of its own. */
+  private tellArray(name: string, { places, uses, scope }: MissingArray, size: string, role: string): boolean {
+    const arrays = this.declared.names(meaning => meaning.kind === 'array')
+    const near = nearestName(name, [...arrays, ...(scope?.names() ?? [])])
+    const sizes = this.declared.names(meaning => meaning.kind === 'size')
+    const line = `${role} ${name}[${role === 'work' && !sizes.includes(size) ? (sizes[0] ?? size) : size}]`
+    const stored = uses.includes('store')
+    if (near) {
+      this.report.error({
+        span: places[0]!,
+        message: `No array \`${name}\` is declared.`,
+        remedy: `Write \`${near}\` if that is meant; else declare it before \`begin\`: \`${line}\`.`,
+        fix: { label: `Write \`${near}\``, edits: places.map(place => ({ ...ends(place), text: near })) },
+      })
+      return false
+    }
+    this.report.error({
+      span: places[0]!,
+      message: `\`${name}\` is used as an array, and no line declares it: \`${line}\` is missing.`,
+      remedy: stored
+        ? `Declare it before \`begin\`: \`${line}\`; \`inout\` is for input that is changed, \`out\` for a result, \`work\` for scratch memory.`
+        : `Declare it before \`begin\`: \`${line}\`.`,
+      fix: this.declaring.insert(line),
+    })
+    return true
+  }
+
+  private tellWord({ name, places, scope, inCode }: MissingWord): void {
+    const near = this.nearTo(name, scope)
+    const span = places[0]!
+    if (near) {
+      this.report.error({
+        span,
+        message: inCode ? `\`${name}\` is neither declared nor ever set.` : `\`${name}\` is not declared.`,
+        remedy: `Write \`${near}\` if that is meant${inCode ? `; else set it first, or declare \`in ${name}\`` : ''}.`,
+        fix: { label: `Write \`${near}\``, edits: places.map(place => ({ ...ends(place), text: near })) },
+      })
+      return
+    }
+    const owner = this.scopes.find(each => each !== scope && each.has(name))
+    if (inCode && owner && scope) {
+      this.report.error({ span, ...strangerIn(name, scope, owner) })
+      return
+    }
+    const line = inCode ? `in ${name}` : `let ${name} = 8`
+    this.report.error({
+      span,
+      message: inCode ? `\`${name}\` is neither declared nor ever set.` : `\`${name}\` is not declared.`,
+      remedy: inCode
+        ? scope?.procedure
+          ? `Set it first, or make it a parameter of \`${scope.procedure.name.text}\`.`
+          : `Set it first, \`${name} <- 0\`, or declare it before \`begin\` where it comes from outside: \`in ${name}\`.`
+        : `A size gets its name from the length of an input, \`in a[${name}]\`; a number to tune is declared with \`${line}\`.`,
+      ...(inCode && !scope?.procedure && { fix: this.declaring.insert(line) }),
+    })
+  }
+
+  private nearTo(name: string, scope: VariableScope | undefined): string | undefined {
+    const words = this.declared.names(({ kind }) => kind !== 'array' && kind !== 'procedure' && kind !== 'scalar')
+    return nearestName(name, [...(scope?.names() ?? []), ...words])
+  }
+}
+
+function ends({ start, end }: Span): { start: number; end: number } {
+  return { start, end }
+}
+
+/** `in` where it is only read, `work` where it is filled first, `inout` where it is read first and then changed. */
+function roleOf(uses: readonly Use[]): 'in' | 'out' | 'inout' | 'work' {
+  if (!uses.includes('store')) return 'in'
+  if (!uses.includes('load')) return 'out'
+  return uses.find(use => use !== 'read') === 'store' ? 'work' : 'inout'
+}
+
+function strangerIn(name: string, scope: VariableScope, owner: VariableScope) {
+  const where = owner.procedure ? `procedure \`${owner.procedure.name.text}\`` : "the routine's own body"
+  const message = `\`${name}\` is a variable of ${where}, which is not seen here.`
+  const remedy = scope.procedure
+    ? `Make it a parameter of \`${scope.procedure.name.text}\`, and give it in each call.`
+    : `Let \`${owner.procedure!.name.text}\` return it, and take it from the call.`
+  return { message, remedy }
+}
