@@ -1,7 +1,7 @@
 import { StrictMode } from 'react'
 import { createRoot } from 'react-dom/client'
-import { readProgram } from '../routine'
 import { downloadText } from './download'
+import { checkDraft } from './store/checking'
 import { type Drawer, KEPT_KEY } from './store/keeping'
 import { isDemo } from './store/kept-state'
 import { resolveTheme } from './store/theme'
@@ -33,10 +33,7 @@ const workbench = createWorkbench({
   drawer: browserDrawer(),
   systemIsDark: dark.matches,
   now: () => performance.now(),
-  check(draft) {
-    const { program, names, diagnostics } = readProgram(draft.text, draft.routine)
-    return { text: draft.text, routine: draft.routine, names, diagnostics, program }
-  },
+  check: checkDraft,
   download: downloadText,
 })
 

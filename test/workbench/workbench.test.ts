@@ -1,6 +1,7 @@
 import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest'
 import { readProgram } from '../../src/routine'
 import { gridPoints, runPoint } from '../../src/sweep'
+import { checkDraft } from '../../src/workbench/store/checking'
 import { DEMO_DRAFT, DEMO_SETTING } from '../../src/workbench/store/demo'
 import { KEPT_KEY, readKept } from '../../src/workbench/store/keeping'
 import { marginCells } from '../../src/workbench/store/margin'
@@ -58,10 +59,7 @@ function setUp(text = SUM, entries: Readonly<Record<string, string>> = {}) {
     drawer,
     systemIsDark: false,
     now: () => Date.now(),
-    check({ text, routine }) {
-      const { program, names, diagnostics } = readProgram(text, routine)
-      return { text, routine, names, diagnostics, program }
-    },
+    check: checkDraft,
     download,
   })
   const { store } = workbench
@@ -208,6 +206,14 @@ describe('results', () => {
 })
 
 describe('the draft', () => {
+  test('falls back to its first routine where the picked one is renamed', () => {
+    const { workbench, state } = setUp(DEMO_DRAFT.text)
+    workbench.pickRoutine('todatum')
+    workbench.write(DEMO_DRAFT.text.replace('routine todatum', 'routine level'))
+    workbench.checkNow()
+    expect(state().checked.program?.routine.name).toBe('bylevel')
+  })
+
   test('is checked a moment after the last change, not before', () => {
     const { workbench, state } = setUp()
     workbench.write('routine')

@@ -95,7 +95,10 @@ function button(label: string, act: () => void): HTMLElement {
   const made = document.createElement('button')
   made.type = 'button'
   made.className = 'act'
-  made.append(...withCode(label))
+  // In one piece: the button sets its parts apart by itself otherwise.
+  const words = document.createElement('span')
+  words.append(...withCode(label))
+  made.append(words)
   made.addEventListener('click', act)
   return made
 }

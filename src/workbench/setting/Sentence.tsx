@@ -1,10 +1,10 @@
 import { Fragment, type ReactNode } from 'react'
 import type { Charges, InstructionSetName } from '../../machine/machine'
-import type { Setting, SizeRange, WidthChoice } from '../../sweep/setting'
+import type { SizeRange, WidthChoice } from '../../sweep/setting'
 import { printWidth } from '../../sweep/widths'
 import { SizeValue } from '../marks/Count'
 import { DashKey, MarkerKey } from '../marks/Marker'
-import type { RoutineShape, SettingText } from '../store/setting-text'
+import { type RoutineShape, type SettingParts, type SettingText, sizeText } from '../store/setting-text'
 import { Slot } from './Slot'
 import { PATTERN_WORDS, readCharges, readRange, SET_ORDER } from './sentence-parts'
 
@@ -15,15 +15,15 @@ export interface SentenceProps {
   readonly shape: RoutineShape
   /** What is written; shown where it cannot be read. */
   readonly text: SettingText
-  /** What it comes to; absent where a part cannot be read. */
-  readonly setting: Setting | undefined
+  /** What it comes to, as far as it can be read. */
+  readonly parts: SettingParts
   /** Slots whose editor is open. */
   readonly open: readonly SlotName[]
   readonly onOpen: (slot: SlotName) => void
 }
 
 /** The setting as the sentence that opens a theorem. It is the legend of every figure as well. */
-export function Sentence({ shape, text, setting, open, onOpen }: SentenceProps) {
+export function Sentence({ shape, text, parts, open, onOpen }: SentenceProps) {
   function slot(name: SlotName, opens: string, children: ReactNode): ReactNode {
     return (
       <Slot id={`slot-${name}`} opens={opens} isOpen={open.includes(name)} onOpen={() => onOpen(name)}>
@@ -38,11 +38,11 @@ export function Sentence({ shape, text, setting, open, onOpen }: SentenceProps) 
       {slot(
         'widths',
         'change the word width',
-        setting ? <Widths widths={setting.widths} /> : <>w = {text.widths}</>,
+        parts.widths ? <Widths widths={parts.widths} /> : <>w = {text.widths}</>,
       )}
       , {slot('sets', 'change the instruction sets', <Sets sets={text.sets} />)},{' '}
       <ChargesPart
-        charges={setting?.charges}
+        charges={parts.charges}
         written={text.charges}
         slot={part => slot('charges', 'change the charges', part)}
       />
@@ -52,13 +52,7 @@ export function Sentence({ shape, text, setting, open, onOpen }: SentenceProps) 
           {slot(
             'sizes',
             sized ? 'change sizes and lets' : 'change lets',
-            setting ? (
-              <Sizes shape={shape} setting={setting} />
-            ) : (
-              <>
-                {shape.sizes[0]} = {text.first}
-              </>
-            ),
+            <Sizes shape={shape} text={text} parts={parts} />,
           )}
         </>
       )}
@@ -172,26 +166,27 @@ function Range({ name, range }: { readonly name: string; readonly range: SizeRan
   }
 }
 
-function Sizes({ shape, setting }: { readonly shape: RoutineShape; readonly setting: Setting }) {
+function Sizes(props: { readonly shape: RoutineShape; readonly text: SettingText; readonly parts: SettingParts }) {
+  const { shape, text, parts } = props
   const [first] = shape.sizes
-  const parts = [
-    ...shape.sizes.map(name => {
-      const range = setting.sizes[name]
-      return range ? (
-        <Range key={name} name={name} range={range} />
-      ) : (
+  const items = [
+    ...shape.sizes.map((name, place) => {
+      const range = parts.sizes[name]
+      if (range) return <Range key={name} name={name} range={range} />
+      const written = sizeText(text, shape, place)
+      return (
         <Fragment key={name}>
-          <i>{name}</i> = <i>{first}</i>
+          <i>{name}</i> = {written === '' && place > 0 ? <i>{first}</i> : written || '…'}
         </Fragment>
       )
     }),
-    ...Object.entries(setting.lets).map(([name, value]) => (
+    ...Object.entries(parts.lets).map(([name, value]) => (
       <Fragment key={`let ${name}`}>
         <i>{name}</i> = {String(value)}
       </Fragment>
     )),
   ]
-  return parts.length > 0 ? join(parts, ', ') : <>lets as declared</>
+  return items.length > 0 ? join(items, ', ') : <>lets as declared</>
 }
 
 function Trials({ trials, seed }: { readonly trials: string; readonly seed: string }) {

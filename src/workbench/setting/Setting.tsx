@@ -76,7 +76,7 @@ export function SettingSection() {
         <Sentence
           shape={shape}
           text={editing?.text ?? settingText}
-          setting={read.setting}
+          parts={read.parts}
           open={open}
           onOpen={next => setEditing({ slot: next, text: editing?.text ?? settingText })}
         />

@@ -1,9 +1,15 @@
-import { INSTRUCTION_SETS, type InstructionSetName } from '../../machine/machine'
+import { type Charges, INSTRUCTION_SETS, type InstructionSetName } from '../../machine/machine'
 import type { Program } from '../../routine/block'
 import { parseCharges } from '../../sweep/charges'
 import { parseLets } from '../../sweep/lets'
 import type { Misread } from '../../sweep/misread'
-import { FEED_PATTERNS, type FeedPattern, type Setting, type SizeRange } from '../../sweep/setting'
+import {
+  FEED_PATTERNS,
+  type FeedPattern,
+  type Setting,
+  type SizeRange,
+  type WidthChoice,
+} from '../../sweep/setting'
 import { parseSizes, parseWhole } from '../../sweep/sizes'
 import { parseWidths, printWidth } from '../../sweep/widths'
 
@@ -46,9 +52,18 @@ export interface SettingProblem extends Misread {
   readonly field: SettingField
 }
 
+export interface SettingParts {
+  readonly widths?: readonly WidthChoice[]
+  readonly charges?: Charges
+  readonly sizes: Readonly<Record<string, SizeRange>>
+  readonly lets: Readonly<Record<string, bigint>>
+}
+
 export interface SettingRead {
   /** Absent where there is a problem. */
   readonly setting?: Setting
+  /** The parts that can be read, whatever is wrong with the others. */
+  readonly parts: SettingParts
   readonly problems: readonly SettingProblem[]
 }
 
@@ -101,9 +116,12 @@ export function readSetting(text: SettingText, shape: RoutineShape): SettingRead
     })
   const trials = whole('trials', text.trials, 1, MOST_TRIALS)
   const seed = whole('seed', text.seed, 0, MOST_SEED)
-  if (problems.length > 0 || !widths || !charges || trials === undefined || seed === undefined) return { problems }
+  const parts: SettingParts = { ...(widths && { widths }), ...(charges && { charges }), sizes, lets }
+  if (problems.length > 0 || !widths || !charges || trials === undefined || seed === undefined)
+    return { parts, problems }
   const { sets, pattern } = text
-  return { setting: { sizes, widths, lets, sets, off: 'refuse', charges, pattern, trials, seed }, problems }
+  const setting: Setting = { sizes, widths, lets, sets, off: 'refuse', charges, pattern, trials, seed }
+  return { setting, parts, problems }
 
   function whole(field: 'trials' | 'seed', written: string, least: number, most: number): number | undefined {
     const forms = `write a whole number from ${least} to ${most}`
