@@ -15,7 +15,8 @@ const MOST_DEPTH = 6
  */
 export class Bounds {
   private readonly ones: bigint
-  private readonly writes: ReadonlySet<number>[]
+  /** By node: the variables that it sets, once they have been asked for. */
+  private readonly writes: (ReadonlySet<number> | undefined)[] = []
   private node = 0
   private step = 0
   private operation = 0
@@ -28,7 +29,6 @@ export class Bounds {
     private readonly width: number,
   ) {
     this.ones = (1n << BigInt(width)) - 1n
-    this.writes = graph.nodes.map(({ steps }) => new Set(steps.flatMap(step => this.stepWrites(step))))
   }
 
   /** Later questions are about the words before this operation of this step. */
@@ -82,7 +82,7 @@ export class Bounds {
     operation: number,
     depth: number,
   ): bigint | undefined {
-    if (!this.writes[node]!.has(variable)) return undefined
+    if (!this.nodeWrites(node).has(variable)) return undefined
     const { steps } = this.graph.nodes[node]!
     for (let at = Math.min(step, steps.length - 1); at >= 0; at--) {
       const each = steps[at]!
@@ -162,11 +162,16 @@ export class Bounds {
       for (const source of this.order.sources[node]!) {
         if (seen.has(source)) continue
         seen.add(source)
-        if (this.writes[source]!.has(variable) || --this.budget <= 0) return true
+        if (this.nodeWrites(source).has(variable) || --this.budget <= 0) return true
         waiting.push(source)
       }
     }
     return false
+  }
+
+  private nodeWrites(node: number): ReadonlySet<number> {
+    this.writes[node] ??= new Set(this.graph.nodes[node]!.steps.flatMap(step => this.stepWrites(step)))
+    return this.writes[node]
   }
 
   private within(most: bigint): bigint {

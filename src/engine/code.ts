@@ -30,9 +30,11 @@ export class CodeBuilder {
     this.bytes.signed(value)
   }
 
-  i64(value: bigint): void {
+  /** A number must fit 32 bits, signed. */
+  i64(value: bigint | number): void {
     this.bytes.byte(OP.i64Const)
-    this.bytes.signed64(value)
+    if (typeof value === 'number') this.bytes.signed(value)
+    else this.bytes.signed64(value)
   }
 
   /** A load or store: `align` is the logarithm of the alignment, `offset` a constant below 2^32 in bytes. */

@@ -44,7 +44,8 @@ export class CountPlan {
       this.firstEdge[from] = bare.length
       const { end } = graph.nodes[from]!
       const targets = targetsOf(end)
-      for (const [slot, to] of targets.entries()) {
+      for (let slot = 0; slot < targets.length; slot++) {
+        const to = targets[slot]!
         const aside = graph.nodes[from]!.aside || graph.nodes[to]!.aside
         const loop = end.kind === 'guard' && slot === 1 ? end.loop : undefined
         bare.push({ from, to, aside, loop, weight: edgeWeight(from, to, targets.length, loops) })
@@ -79,33 +80,32 @@ export class CountPlan {
       excess[to]! += amount
       excess[from]! -= amount
     }
-    for (const [at, { counter }] of this.edges.entries()) if (counter >= 0) settle(at, counts(counter))
+    for (let at = 0; at < this.edges.length; at++) {
+      const { counter } = this.edges[at]!
+      if (counter >= 0) settle(at, counts(counter))
+    }
     for (const { node, edge } of this.leavesFirst)
       settle(edge, this.edges[edge]!.to === node ? -excess[node]! : excess[node]!)
     const visits = new Float64Array(this.graph.nodes.length)
     visits[0] = 1
-    for (const [at, { to }] of this.edges.entries()) visits[to]! += flow[at]!
+    for (let at = 0; at < this.edges.length; at++) visits[this.edges[at]!.to]! += flow[at]!
     return visits
   }
 
   private walkTree() {
-    const branches = new Map<number, number[]>()
-    const join = (node: number, edge: number) => {
-      const list = branches.get(node)
-      if (list) list.push(edge)
-      else branches.set(node, [edge])
-    }
-    for (const [at, { from, to, counter }] of this.edges.entries()) {
+    const branches: number[][] = this.graph.nodes.map(() => [])
+    for (let at = 0; at < this.edges.length; at++) {
+      const { from, to, counter } = this.edges[at]!
       if (counter !== IN_TREE) continue
-      join(from, at)
-      join(to, at)
+      branches[from]!.push(at)
+      branches[to]!.push(at)
     }
     const found: { node: number; edge: number }[] = []
     const seen = new Uint8Array(this.graph.nodes.length)
     const waiting = [0]
     seen[0] = 1
     for (let node = waiting.pop(); node !== undefined; node = waiting.pop()) {
-      for (const edge of branches.get(node) ?? []) {
+      for (const edge of branches[node]!) {
         const { from, to } = this.edges[edge]!
         const next = from === node ? to : from
         if (seen[next]) continue
@@ -123,8 +123,8 @@ const PASSES = 8
 const MOST_DEPTH = 12
 
 function edgeWeight(from: number, to: number, slots: number, { depth }: Loops): number {
-  const visits = (node: number) => PASSES ** Math.min(depth[node]!, MOST_DEPTH)
-  return Math.min(visits(from) / slots, visits(to))
+  const before = PASSES ** Math.min(depth[from]!, MOST_DEPTH)
+  return Math.min(before / slots, PASSES ** Math.min(depth[to]!, MOST_DEPTH))
 }
 
 /** A spanning tree of greatest weight, directions aside: the edges in it (J. B. Kruskal, Proc. AMS 7, 1956). */
@@ -137,15 +137,24 @@ function spanningTree(nodes: number, edges: readonly BareEdge[]): Uint8Array {
     }
     return node
   }
-  const heaviest = edges.map((_, at) => at).sort((a, b) => edges[b]!.weight - edges[a]!.weight)
+  // There are few weights, one or two for each depth of loops.
+  const byWeight = new Map<number, number[]>()
+  for (let at = 0; at < edges.length; at++) {
+    const { weight, aside, loop } = edges[at]!
+    if (aside || loop !== undefined) continue
+    const list = byWeight.get(weight)
+    if (list) list.push(at)
+    else byWeight.set(weight, [at])
+  }
   const inTree = new Uint8Array(edges.length)
-  for (const at of heaviest) {
-    if (edges[at]!.aside || edges[at]!.loop !== undefined) continue
-    const a = find(edges[at]!.from)
-    const b = find(edges[at]!.to)
-    if (a === b) continue
-    root[a] = b
-    inTree[at] = 1
+  for (const weight of [...byWeight.keys()].sort((a, b) => b - a)) {
+    for (const at of byWeight.get(weight)!) {
+      const a = find(edges[at]!.from)
+      const b = find(edges[at]!.to)
+      if (a === b) continue
+      root[a] = b
+      inTree[at] = 1
+    }
   }
   return inTree
 }

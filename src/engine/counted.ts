@@ -1,5 +1,5 @@
 import type { Comparison } from '../../grammar/tree'
-import type { Operand, Program } from '../routine'
+import type { Operand, Operation, Program } from '../routine'
 import { type End, type FlowGraph, type Step, shiftOperand, targetsOf, withTargets } from './flow'
 import { operationWrites } from './live'
 import { type FlowOrder, findLoops, type Loops, orderFlow } from './order'
@@ -72,21 +72,18 @@ function findLoop(
   const within = new Set(members)
   const writes = new Map<number, number>()
   const moves: { variable: number; down: boolean; node: number }[] = []
-  const write = (variable: number) => writes.set(variable, (writes.get(variable) ?? 0) + 1)
   for (const at of members) {
     for (const step of nodes[at]!.steps) {
-      if (step.kind === 'copy') step.into.forEach(write)
-      else if (step.kind === 'pull') step.variables.forEach(write)
+      if (step.kind === 'copy') addWrites(writes, step.into, 0)
+      else if (step.kind === 'pull') addWrites(writes, step.variables, 0)
       else if (step.kind === 'block') {
         const { operations, checkpoint } = program.blocks[step.block]!
         if (checkpoint !== undefined && at !== head) return undefined
         for (const operation of operations) {
-          for (const variable of operationWrites(operation)) write(variable + step.shift)
-          if (operation.kind !== 'binary') continue
-          const { function: name, into, left, right } = operation
-          if (name !== 'add' && name !== 'subtract') continue
-          if (left.kind !== 'variable' || left.variable !== into || !isOne(program, right)) continue
-          moves.push({ variable: into + step.shift, down: name === 'subtract', node: at })
+          addWrites(writes, operationWrites(operation), step.shift)
+          if (operation.kind !== 'binary' || !movesByOne(program, operation)) continue
+          const down = operation.function === 'subtract'
+          moves.push({ variable: operation.into + step.shift, down, node: at })
         }
       }
     }
@@ -104,10 +101,16 @@ function findLoop(
   return undefined
 }
 
-function isOne({ constants }: Program, operand: Operand): boolean {
-  if (operand.kind !== 'constant') return false
-  const constant = constants[operand.constant]!
-  return constant.kind === 'literal' && constant.value === 1n
+function addWrites(writes: Map<number, number>, variables: readonly number[], shift: number): void {
+  for (const variable of variables) writes.set(variable + shift, (writes.get(variable + shift) ?? 0) + 1)
+}
+
+function movesByOne({ constants }: Program, operation: Extract<Operation, { kind: 'binary' }>): boolean {
+  const { function: name, into, left, right } = operation
+  if (name !== 'add' && name !== 'subtract') return false
+  if (left.kind !== 'variable' || left.variable !== into || right.kind !== 'constant') return false
+  const by = constants[right.constant]!
+  return by.kind === 'literal' && by.value === 1n
 }
 
 /** Whether one node dominates another. */

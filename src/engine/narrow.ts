@@ -2,7 +2,7 @@ import type { Comparison } from '../../grammar/tree'
 import type { BinaryFunction, Constant, Operand, UnaryFunction } from '../routine'
 import type { Bounds } from './bounds'
 import type { CodeBuilder, LocalPool } from './code'
-import { I32, I32_OPS, I64, I64_OPS, OP, type WordOpcodes } from './opcode'
+import { I32_OPS, I64_OPS, OP, type WordOpcodes } from './opcode'
 import type { RunLayout, SlotTable } from './slots'
 import { SLOT_BYTES } from './slots'
 import type { WordCode } from './word-code'
@@ -16,10 +16,14 @@ export class NarrowWords implements WordCode {
   private readonly ones: bigint
   private readonly variables: number[]
   private readonly scratch = new Map<string, number>()
+  private readonly lengths: number[] = []
+  private readonly constantLocals: number[] = []
+  /** By constant: its word, where that is known now. */
+  private readonly knownWords: readonly (bigint | undefined)[]
 
   constructor(
     private readonly width: number,
-    private readonly constants: readonly Constant[],
+    constants: readonly Constant[],
     variables: number,
     private readonly code: CodeBuilder,
     private readonly pool: LocalPool,
@@ -32,6 +36,10 @@ export class NarrowWords implements WordCode {
     this.logBytes = Math.log2(this.bytes)
     this.ones = (1n << BigInt(width)) - 1n
     this.variables = new Array(variables).fill(-1)
+    this.knownWords = constants.map(constant => {
+      if (constant.kind === 'literal') return constant.value & this.ones
+      return constant.kind === 'width' ? BigInt(width) : undefined
+    })
   }
 
   copy(from: readonly Operand[], into: readonly number[]): void {
@@ -117,8 +125,10 @@ export class NarrowWords implements WordCode {
 
   outsideArray(index: Operand, array: number): void {
     this.push(index)
-    const length = (run: RunLayout) => BigInt(run.binding.arrays[array]!.length)
-    this.code.get(this.slots.parameter(`length ${array}`, this.ops, length))
+    this.lengths[array] ??= this.slots.parameter(`length ${array}`, this.ops, run =>
+      BigInt(run.binding.arrays[array]!.length),
+    )
+    this.code.get(this.lengths[array]!)
     this.code.op(this.ops.geU)
   }
 
@@ -182,14 +192,14 @@ export class NarrowWords implements WordCode {
     code.get(at)
     code.set(this.local(`start ${loop}`, ops))
     // The variable's last word: where it stands, and passes - 1 on, up to the end of the word.
-    code.i64(1n)
+    code.i64(1)
     code.op(I64_OPS.sub)
     code.set(passes)
     if (down) {
       push()
       code.get(passes)
       code.op(I64_OPS.sub)
-      code.i64(0n)
+      code.i64(0)
       push()
       code.get(passes)
       code.op(I64_OPS.geU)
@@ -249,7 +259,7 @@ export class NarrowWords implements WordCode {
     }
     code.op(I64_OPS.mul)
     code.tee(whole)
-    code.i64(BigInt(this.width))
+    code.i64(this.width)
     code.op(I64_OPS.shrU)
     code.op(OP.i32WrapI64)
     this.set(high)
@@ -265,78 +275,47 @@ export class NarrowWords implements WordCode {
    */
   private productByHalves(high: number, low: number, left: Operand, right: Operand): void {
     const { code } = this
-    const half = BigInt(Math.ceil(this.width / 2))
-    const lowHalf = (1n << half) - 1n
-    const take = (name: string) => this.local(name, I64_OPS)
-    const [x, y, x0, x1, y0, y1, inner, outer] = [
-      take('x'),
-      take('y'),
-      take('x0'),
-      take('x1'),
-      take('y0'),
-      take('y1'),
-      take('inner'),
-      take('outer'),
-    ]
-    const split = (operand: Operand, whole: number, bottom: number, top: number) => {
-      this.push(operand)
-      code.tee(whole)
-      code.i64(lowHalf)
-      code.op(I64_OPS.and)
-      code.set(bottom)
-      code.get(whole)
-      code.i64(half)
-      code.op(I64_OPS.shrU)
-      code.set(top)
-    }
-    split(left, x, x0, x1)
-    split(right, y, y0, y1)
-    const multiply = (a: number, b: number) => {
-      code.get(a)
-      code.get(b)
-      code.op(I64_OPS.mul)
-    }
-    const topOf = (local: number) => {
-      code.get(local)
-      code.i64(half)
-      code.op(I64_OPS.shrU)
-    }
-    const bottomOf = (local: number) => {
-      code.get(local)
-      code.i64(lowHalf)
-      code.op(I64_OPS.and)
-    }
+    const x = this.local('x', I64_OPS)
+    const y = this.local('y', I64_OPS)
+    const x0 = this.local('x0', I64_OPS)
+    const x1 = this.local('x1', I64_OPS)
+    const y0 = this.local('y0', I64_OPS)
+    const y1 = this.local('y1', I64_OPS)
+    const inner = this.local('inner', I64_OPS)
+    const outer = this.local('outer', I64_OPS)
+    this.split(left, x, x0, x1)
+    this.split(right, y, y0, y1)
     // x holds x0 y0 from here on.
-    multiply(x0, y0)
+    this.multiply(x0, y0)
     code.set(x)
-    multiply(x1, y0)
-    topOf(x)
+    this.multiply(x1, y0)
+    this.topHalf(x)
     code.op(I64_OPS.add)
     code.set(inner)
-    multiply(x0, y1)
-    bottomOf(inner)
+    this.multiply(x0, y1)
+    this.bottomHalf(inner)
     code.op(I64_OPS.add)
     code.set(outer)
     // The bottom 2h bits.
     code.get(outer)
-    code.i64(half)
+    code.i64(this.half)
     code.op(I64_OPS.shl)
-    bottomOf(x)
+    this.bottomHalf(x)
     code.op(I64_OPS.or)
     code.set(x)
     // The top.
-    multiply(x1, y1)
-    topOf(inner)
+    this.multiply(x1, y1)
+    this.topHalf(inner)
     code.op(I64_OPS.add)
-    topOf(outer)
+    this.topHalf(outer)
     code.op(I64_OPS.add)
     if (this.width % 2 === 1) {
-      code.i64(1n)
+      code.i64(1)
       code.op(I64_OPS.shl)
       code.get(x)
-      code.i64(BigInt(this.width))
+      code.i64(this.width)
       code.op(I64_OPS.shrU)
-      code.i64(1n)
+      code.i64(1)
       code.op(I64_OPS.and)
       code.op(I64_OPS.or)
     }
@@ -344,6 +323,38 @@ export class NarrowWords implements WordCode {
     code.get(x)
     this.mask()
     this.set(low)
+  }
+
+  /** Bits of the bottom half of a word above 32 bits. */
+  private get half(): number {
+    return Math.ceil(this.width / 2)
+  }
+
+  private split(operand: Operand, whole: number, bottom: number, top: number): void {
+    this.push(operand)
+    this.code.set(whole)
+    this.bottomHalf(whole)
+    this.code.set(bottom)
+    this.topHalf(whole)
+    this.code.set(top)
+  }
+
+  private multiply(a: number, b: number): void {
+    this.code.get(a)
+    this.code.get(b)
+    this.code.op(I64_OPS.mul)
+  }
+
+  private topHalf(local: number): void {
+    this.code.get(local)
+    this.code.i64(this.half)
+    this.code.op(I64_OPS.shrU)
+  }
+
+  private bottomHalf(local: number): void {
+    this.code.get(local)
+    this.code.i64((1n << BigInt(this.half)) - 1n)
+    this.code.op(I64_OPS.and)
   }
 
   /** Whether a result may have bits past the word. */
@@ -384,10 +395,7 @@ export class NarrowWords implements WordCode {
   }
 
   private known(operand: Operand): bigint | undefined {
-    if (operand.kind === 'variable') return undefined
-    const constant = this.constants[operand.constant]!
-    if (constant.kind === 'literal') return constant.value & this.ones
-    return constant.kind === 'width' ? BigInt(this.width) : undefined
+    return operand.kind === 'variable' ? undefined : this.knownWords[operand.constant]
   }
 
   private push(operand: Operand): void {
@@ -399,7 +407,12 @@ export class NarrowWords implements WordCode {
     if (known !== undefined) this.constant(known)
     else {
       const at = operand.constant
-      this.code.get(this.slots.parameter(`constant ${at}`, this.ops, run => run.binding.constants[at]!))
+      this.constantLocals[at] ??= this.slots.parameter(
+        `constant ${at}`,
+        this.ops,
+        run => run.binding.constants[at]!,
+      )
+      this.code.get(this.constantLocals[at]!)
     }
   }
 
@@ -440,12 +453,12 @@ export class NarrowWords implements WordCode {
     return local
   }
 
+  /** A local for intermediate values; each name goes with one type. */
   private local(name: string, { type }: WordOpcodes): number {
-    const key = `${name} ${type === I32 ? I32 : I64}`
-    let local = this.scratch.get(key)
+    let local = this.scratch.get(name)
     if (local === undefined) {
       local = this.pool.take(type)
-      this.scratch.set(key, local)
+      this.scratch.set(name, local)
     }
     return local
   }

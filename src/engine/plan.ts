@@ -88,7 +88,7 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
       const counter = counts.counterOf(node, slot)
       if (counter < 0) return
       code.get(counterLocal(counter))
-      code.i64(1n)
+      code.i64(1)
       code.op(I64_OPS.add)
       code.set(counterLocal(counter))
     },

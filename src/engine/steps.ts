@@ -23,6 +23,7 @@ export class StepCode {
   private made: number | undefined
   private readonly selectorLocals: number[] = []
   private readonly passes: number[] = []
+  private readonly bases: number[] = []
   private frames: { count: number; peak: number; sum: number } | undefined
   private stack: { pointer: number; end: number } | undefined
 
@@ -55,9 +56,9 @@ export class StepCode {
       case 'block': {
         const { operations, checkpoint } = this.program.blocks[step.block]!
         if (checkpoint !== undefined && !step.charged) this.checkpoint(step.block, checkpoint)
-        for (const [at, operation] of operations.entries()) {
+        for (let at = 0; at < operations.length; at++) {
           this.bounds.moveTo(node, place, at)
-          this.operation(operation, step.shift, step.block)
+          this.operation(operations[at]!, step.shift, step.block)
         }
         break
       }
@@ -70,7 +71,7 @@ export class StepCode {
       case 'unframe': {
         const { count } = this.frameLocals()
         this.code.get(count)
-        this.code.i64(BigInt(step.words))
+        this.code.i64(step.words)
         this.code.op(I64_OPS.sub)
         this.code.set(count)
         break
@@ -138,10 +139,10 @@ export class StepCode {
     const { code } = this
     const fuel = this.fuel()
     code.get(fuel)
-    code.i64(BigInt(weight))
+    code.i64(weight)
     code.op(I64_OPS.sub)
     code.tee(fuel)
-    code.i64(0n)
+    code.i64(0)
     code.op(I64_OPS.ltS)
     this.failIf({ kind: 'operation-limit', block })
   }
@@ -150,18 +151,18 @@ export class StepCode {
     const { code } = this
     const fuel = this.fuel()
     code.get(fuel)
-    code.i64(BigInt(weight))
+    code.i64(weight)
     code.op(I64_OPS.ltS)
     this.failIf({ kind: 'operation-limit', block })
     // A power of two for the weight: fewer passes than there may be, and no division. The guard comes back for more.
-    const shift = BigInt(Math.ceil(Math.log2(weight)))
+    const shift = Math.ceil(Math.log2(weight))
     code.get(fuel)
     code.i64(shift)
     code.op(I64_OPS.shrU)
     if (weight > 1) {
-      code.i64(1n)
+      code.i64(1)
       code.get(fuel)
-      code.i64(1n << shift)
+      code.i64(1n << BigInt(shift))
       code.op(I64_OPS.geS)
       code.op(OP.select)
     }
@@ -175,7 +176,7 @@ export class StepCode {
     const made = this.madeLocal()
     this.words.pushDistance(loop, variable, down)
     if (passes > 0) {
-      code.i64(BigInt(passes))
+      code.i64(passes)
       code.op(I64_OPS.add)
     }
     code.tee(made)
@@ -185,7 +186,7 @@ export class StepCode {
     code.get(fuel)
     code.get(made)
     if (weight > 1) {
-      code.i64(BigInt(weight))
+      code.i64(weight)
       code.op(I64_OPS.mul)
     }
     code.op(I64_OPS.sub)
@@ -206,11 +207,10 @@ export class StepCode {
 
   private operation(operation: Operation, shift: number, block: number): void {
     const { words } = this
-    const at = (operand: Operand) => shiftOperand(operand, shift)
     switch (operation.kind) {
       case 'binary': {
-        const left = at(operation.left)
-        const right = at(operation.right)
+        const left = shiftOperand(operation.left, shift)
+        const right = shiftOperand(operation.right, shift)
         if (operation.function === 'divide' || operation.function === 'modulo') {
           words.zero(right)
           this.failIf({ kind: 'divide', block, operation }, left)
@@ -219,47 +219,60 @@ export class StepCode {
         break
       }
       case 'unary':
-        words.unary(operation.function, operation.into + shift, at(operation.operand))
+        words.unary(operation.function, operation.into + shift, shiftOperand(operation.operand, shift))
         break
       case 'move':
-        words.copy([at(operation.from)], [operation.into + shift])
+        words.copy([shiftOperand(operation.from, shift)], [operation.into + shift])
         break
       case 'product':
-        words.product(operation.high + shift, operation.low + shift, at(operation.left), at(operation.right))
+        words.product(
+          operation.high + shift,
+          operation.low + shift,
+          shiftOperand(operation.left, shift),
+          shiftOperand(operation.right, shift),
+        )
         break
       case 'load': {
-        const index = at(operation.index)
+        const index = shiftOperand(operation.index, shift)
         words.outsideArray(index, operation.array)
         this.failIf({ kind: 'index', block, operation }, index)
         words.load(operation.into + shift, this.pushElement(index, operation.array))
         break
       }
       case 'store': {
-        const index = at(operation.index)
+        const index = shiftOperand(operation.index, shift)
         words.outsideArray(index, operation.array)
         this.failIf({ kind: 'index', block, operation }, index)
-        words.store(at(operation.value), this.pushElement(index, operation.array))
+        words.store(shiftOperand(operation.value, shift), this.pushElement(index, operation.array))
         if (this.marked && this.program.routine.arrays[operation.array]!.role === 'work')
           this.markElement(index, operation.array)
         break
       }
       case 'load-at': {
-        words.outsideMemory(at(operation.base), operation.index && at(operation.index), false)
+        words.outsideMemory(
+          shiftOperand(operation.base, shift),
+          operation.index && shiftOperand(operation.index, shift),
+          false,
+        )
         this.failIf({ kind: 'address', block, operation }, 'address')
         this.pushPlace()
         words.load(operation.into + shift, this.head)
         break
       }
       case 'store-at': {
-        words.outsideMemory(at(operation.base), operation.index && at(operation.index), true)
+        words.outsideMemory(
+          shiftOperand(operation.base, shift),
+          operation.index && shiftOperand(operation.index, shift),
+          true,
+        )
         this.failIf({ kind: 'address', block, operation }, 'address')
         this.pushPlace()
-        words.store(at(operation.value), this.head)
+        words.store(shiftOperand(operation.value, shift), this.head)
         if (this.marked) this.markPlace()
         break
       }
       case 'check-step': {
-        const operand = at(operation.operand)
+        const operand = shiftOperand(operation.operand, shift)
         words.zero(operand)
         this.failIf({ kind: 'step', block, operation }, operand)
         break
@@ -295,12 +308,10 @@ export class StepCode {
   /** Leaves the address of an element in bytes; gives the constant to add to it. */
   private pushElement(index: Operand, array: number): number {
     const { code, words } = this
-    const base = (bytes: number) =>
-      this.slots.parameter(`base ${array}`, I32_OPS, run => BigInt(run.binding.arrays[array]!.base * bytes))
     const known = words.knownIndex(index)
     if (known !== undefined) {
       if (array === 0) code.i32(0)
-      else code.get(base(words.bytes))
+      else code.get(this.base(array))
       return this.head + known * words.bytes
     }
     words.pushIndex(index)
@@ -308,10 +319,19 @@ export class StepCode {
     code.op(I32_OPS.shl)
     // The first array stands at address 0.
     if (array > 0) {
-      code.get(base(words.bytes))
+      code.get(this.base(array))
       code.op(I32_OPS.add)
     }
     return this.head
+  }
+
+  /** The local that holds where an array begins, in bytes from address 0. */
+  private base(array: number): number {
+    const { bytes } = this.words
+    this.bases[array] ??= this.slots.parameter(`base ${array}`, I32_OPS, run =>
+      BigInt(run.binding.arrays[array]!.base * bytes),
+    )
+    return this.bases[array]!
   }
 
   /** Leaves the address last worked out, in bytes. */
@@ -349,14 +369,14 @@ export class StepCode {
     if (!base && !kept) {
       // The sum is known now; whether the limit is lower is all there is to see.
       code.get(limit)
-      code.i64(BigInt(words))
+      code.i64(words)
       code.op(I64_OPS.ltS)
       this.failIf({ kind: 'frame-limit', block })
       return
     }
     const { count, peak, sum } = this.frameLocals()
     if (base) code.get(count)
-    code.i64(BigInt(words))
+    code.i64(words)
     if (base) code.op(I64_OPS.add)
     code.tee(sum)
     code.get(limit)

@@ -98,7 +98,7 @@ class Structure {
       if (order.rank[at] === 0) continue
       const parent = order.dominator[at]!
       const left = this.outermostLeft(parent, at)
-      const joins = order.sources[at]!.filter(source => order.rank[source]! < order.rank[at]!).length > 1
+      const joins = this.forwardWays(at) > 1
       if (left === -1 && !joins && !this.dispatched.has(at)) continue
       this.placed[at] = 1
       const [map, key] = left === -1 ? ([this.followers, parent] as const) : ([this.afterLoop, left] as const)
@@ -108,13 +108,23 @@ class Structure {
     }
   }
 
+  private forwardWays(to: number): number {
+    const { sources, rank } = this.order
+    let ways = 0
+    for (const source of sources[to]!) if (rank[source]! < rank[to]!) ways++
+    return ways
+  }
+
   /** The header of the outermost loop that holds `from` and not `to`; -1 for none. */
   private outermostLeft(from: number, to: number): number {
-    const { inner, outer } = this.loops
-    const around = new Set<number>()
-    for (let head = inner[to]!; head !== -1; head = outer[head]!) around.add(head)
+    const { inner, outer, depth } = this.loops
     let left = -1
-    for (let head = inner[from]!; head !== -1 && !around.has(head); head = outer[head]!) left = head
+    let around = inner[to]!
+    for (let head = inner[from]!; head !== -1; head = outer[head]!) {
+      while (around !== -1 && depth[around]! > depth[head]!) around = outer[around]!
+      if (head === around) break
+      left = head
+    }
     return left
   }
 
@@ -163,9 +173,8 @@ class Structure {
         const [yes, no] = end.kind === 'guard' ? [end.past, end.to] : [end.yes, end.no]
         if (end.kind === 'guard') node.past(end)
         else node.test(end)
-        const direct = (slot: number, to: number) => (node.counts(at, slot) ? undefined : this.label(at, to))
-        const yesLabel = direct(0, yes)
-        const noLabel = direct(1, no)
+        const yesLabel = node.counts(at, 0) ? undefined : this.label(at, yes)
+        const noLabel = node.counts(at, 1) ? undefined : this.label(at, no)
         if (yesLabel !== undefined) {
           code.branch(OP.brIf, yesLabel)
           tasks.push({ kind: 'way', from: at, slot: 1, to: no })
