@@ -20,8 +20,15 @@ import { type ExpandedFunction, type Expansion, expansionFor } from './expansion
  * One copy of a procedure serves one line, so that visits tell lines apart. A program without such uses comes back as it is.
  */
 export function expandProgram(program: Program, set: InstructionSet): Program {
-  return new ProgramExpander(program, set).expand()
+  const known = expanded.get(program) ?? new Map<InstructionSet, Program>()
+  expanded.set(program, known)
+  const answer = known.get(set) ?? new ProgramExpander(program, set).expand()
+  known.set(set, answer)
+  return answer
 }
+
+/** Kept, so that the points of a grid share one expanded program, and so its modules. */
+const expanded = new WeakMap<Program, Map<InstructionSet, Program>>()
 
 /** An operation that the set takes away: what stands in, what it is given and where its results go. */
 interface Use {

@@ -34,7 +34,7 @@ export function writeCountJson({ binding, setting, point, result, tally, verdict
     byLine: weighed.byLine.map(({ line, count, time }) => ({ line, count, time: plainCount(time) })),
     space: tally.space,
     outputs: outputsOf(binding, result),
-    audit: notesOf(binding).map(plainNote),
+    audit: notesOf(binding, tally).map(plainNote),
     checks: verdicts,
   }
   return JSON.stringify(report, undefined, 2)

@@ -138,8 +138,8 @@ function verdicts({ binding, verdicts }: CountReport): string {
   return layTable(columns, rows)
 }
 
-function notes({ binding }: CountReport): string {
-  return notesOf(binding)
+function notes({ binding, tally }: CountReport): string {
+  return notesOf(binding, tally)
     .map(({ line, message }) => `line ${line}: ${message}`)
     .join('\n')
 }

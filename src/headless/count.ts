@@ -31,7 +31,7 @@ export async function count(given: Arguments, terminal: Terminal): Promise<Exit>
   const point = onlyPoint(setting, source)
   const way = readWay(given)
 
-  const refused = refuseClasses(program, INSTRUCTION_SETS[point.set])
+  const refused = setting.off === 'refuse' ? refuseClasses(program, INSTRUCTION_SETS[point.set]) : []
   if (refused.length > 0)
     throw new Leave(EXIT.usage, refused.map(diagnostic => sayDiagnostic(source.file, diagnostic)).join('\n'))
   const bound = bindPoint(program, setting, point)

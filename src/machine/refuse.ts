@@ -20,7 +20,7 @@ export function refuseClasses(program: Program, set: InstructionSet): Diagnostic
       severity: 'error',
       span,
       message: `line ${span.line} uses ${off}, which the instruction set ${set.name} lacks`,
-      remedy: `Choose an instruction set that has ${off}, or write line ${span.line} without it.`,
+      remedy: `Choose an instruction set that has ${off}, have it expanded, or write line ${span.line} without it.`,
     }))
 }
 

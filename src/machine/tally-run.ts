@@ -1,6 +1,6 @@
 import { type ChargedClass, OPERATION_CLASSES, type OperationClass } from '../routine'
 import type { Binding, RunResult } from './run'
-import type { Space, Tally } from './tally'
+import type { ExpandedUse, Space, Tally } from './tally'
 
 type Finished = Extract<RunResult, { ok: true }>
 
@@ -8,6 +8,7 @@ type Finished = Extract<RunResult, { ok: true }>
 export function tallyRun(binding: Binding, result: Finished): Tally {
   const byClass = Object.fromEntries(OPERATION_CLASSES.map(each => [each, 0])) as Record<OperationClass, number>
   const lines = new Map<number, Partial<Record<ChargedClass, number>>>()
+  const stoodIn = new Map<string, { line: number; class: OperationClass; calls: number; operations: number }>()
   let indexed = 0
   for (const [at, { costs }] of binding.program.blocks.entries()) {
     const visits = result.visits[at]!
@@ -19,10 +20,26 @@ export function tallyRun(binding: Binding, result: Finished): Tally {
       const line = lines.get(cost.line) ?? {}
       lines.set(cost.line, line)
       line[cost.class] = (line[cost.class] ?? 0) + count
+      if (!cost.expanded || cost.class === 'index') continue
+      const key = `${cost.line} ${cost.expanded}`
+      const use = stoodIn.get(key) ?? { line: cost.line, class: cost.expanded, calls: 0, operations: 0 }
+      stoodIn.set(key, use)
+      use.operations += count
+      if (cost.class === 'call') use.calls += count
     }
   }
   const byLine = [...lines].sort(([a], [b]) => a - b).map(([line, counts]) => ({ line, counts }))
-  return { byClass, byLine, indexed, space: spaceOf(binding, result) }
+  const expanded = [...stoodIn.values()]
+    .sort((a, b) => a.line - b.line)
+    // A use is one call there and one back.
+    .map(({ calls, ...use }): ExpandedUse => ({ ...use, uses: calls / 2 }))
+  return {
+    byClass,
+    byLine,
+    indexed,
+    ...(expanded.length > 0 ? { expanded } : {}),
+    space: spaceOf(binding, result),
+  }
 }
 
 function spaceOf(binding: Binding, { touched, frames }: Finished): Space {

@@ -22,5 +22,15 @@ export interface Tally {
   }[]
   /** Base-plus-index accesses. */
   readonly indexed: number
+  /** What stood in for classes that are off, by line and class; absent where nothing did. */
+  readonly expanded?: readonly ExpandedUse[]
   readonly space: Space
+}
+
+/** The expansions on one line for one class: `operations`, of `uses` uses, are part of the line's count. */
+export interface ExpandedUse {
+  readonly line: number
+  readonly class: OperationClass
+  readonly uses: number
+  readonly operations: number
 }

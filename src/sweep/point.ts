@@ -1,4 +1,4 @@
-import { type CompiledProgram, compileProgram } from '../engine'
+import { type CompiledProgram, compileProgram, expandProgram } from '../engine'
 import { feedInput, trialSeed } from '../feed'
 import {
   type Binding,
@@ -74,12 +74,11 @@ export function bindPoint(
   const choice = setting.widths[point.widthChoice]
   const at = choice ? widthAt(choice, point.sizes) : { width: point.width }
   if ('problem' in at) return { reason: at.problem }
-  const [refused] = refuseClasses(program, INSTRUCTION_SETS[point.set])
-  if (refused) {
-    const expand = setting.off === 'expand' ? ', and there is no expansion of it yet' : ''
-    return { reason: `${refused.message}${expand}`, span: refused.span }
-  }
-  const bound = bindProgram(program, { width: point.width, sizes: point.sizes, lets: setting.lets }, limits)
+  const set = INSTRUCTION_SETS[point.set]
+  const [refused] = setting.off === 'refuse' ? refuseClasses(program, set) : []
+  if (refused) return { reason: refused.message, span: refused.span }
+  const runnable = setting.off === 'expand' ? expandProgram(program, set) : program
+  const bound = bindProgram(runnable, { width: point.width, sizes: point.sizes, lets: setting.lets }, limits)
   return 'binding' in bound ? bound : bound.refusal
 }
 
