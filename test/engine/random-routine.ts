@@ -77,19 +77,19 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
     labels: [],
     procedures,
     depth: undefined,
-    inside: 0,
+    loops: [],
     loopNames: [],
     fresh: counter(),
     ...place,
   })
-  const loops = ['i', 'j', 'k']
+  const loopNames = ['i', 'j', 'k']
   const constants = ['c', 'm', 'w', ...(arrays.some(array => array.sized) ? ['n'] : [])]
 
   const procedureText = ({ name, parameters, results, bodySeed, bounded }: (typeof procedures)[number]) => {
     const taken = ['a0', 'a1'].slice(0, parameters)
     const given = ['r0', 'r1'].slice(0, results)
     const own = [...given, 'x', 'y']
-    const start = [...own, 'fuel', ...loops].map(
+    const start = [...own, 'fuel', ...loopNames].map(
       (variable, at) => `  ${variable} <- ${variable === 'fuel' ? '~0' : at % 2}`,
     )
     const body = bodySeed(
@@ -97,7 +97,7 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
         readable: [...own, ...taken, 'depth', ...constants],
         assignable: [...own, ...taken],
         depth: bounded ? 'depth - 1' : 'depth',
-        loopNames: loops,
+        loopNames,
       }),
     )
     return [
@@ -114,7 +114,7 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
   const variables = [...kept, ...outputs, ...locals]
   const initial = [...outputs, ...locals].map((variable, at) => `  ${variable} <- ${word(at)}`)
   const body = drawn.body(
-    scope({ readable: [...variables, ...inputs, ...constants], assignable: variables, loopNames: loops }),
+    scope({ readable: [...variables, ...inputs, ...constants], assignable: variables, loopNames }),
   )
   const text = [
     'routine random',
@@ -132,7 +132,7 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
     'begin',
     ...initial,
     `  fuel <- ${modulus - 1n}`,
-    ...loops.map((variable, at) => `  ${variable} <- ${at % 2}`),
+    ...loopNames.map((variable, at) => `  ${variable} <- ${at % 2}`),
     ...body.map(line => `  ${line}`),
     'end',
     '',

@@ -11,8 +11,8 @@ export interface Scope {
   readonly procedures: readonly { readonly name: string; readonly parameters: number; readonly results: number }[]
   /** The expression that a call passes on as the depth left; absent in the routine's own body. */
   readonly depth: string | undefined
-  /** How many structured forms stand around. */
-  readonly inside: number
+  /** Variables of the loops around, outermost first. */
+  readonly loops: readonly string[]
   /** Loop variables that are free to take, outermost first. */
   readonly loopNames: readonly string[]
   readonly fresh: () => number
@@ -85,16 +85,24 @@ function isReadOnly({ role }: Arrays[number]): boolean {
   return role === 'in' || role === 'fix'
 }
 
-/** An index: most often one that lies in the array, by a literal or a remainder. */
+/** An index: most often one that lies in the array, by a literal, a remainder, a mask, or near a loop's variable. */
 function indexInto(word: fc.Arbitrary<Word>): fc.Arbitrary<(length: number) => Word> {
+  const wrapped = (operator: string) =>
+    word.map(inner => (length: number) => (scope: Scope) => {
+      const bound = Math.max(1, Math.min(length, Number(scope.modulus - 1n)))
+      return `(${inner(scope)}) ${operator} ${operator === '&' ? bound - 1 : bound}`
+    })
   return fc.oneof(
-    { weight: 8, arbitrary: fc.nat(50).map(at => (length: number) => () => String(at % Math.max(1, length))) },
+    { weight: 6, arbitrary: fc.nat(50).map(at => (length: number) => () => String(at % Math.max(1, length))) },
+    { weight: 3, arbitrary: wrapped('mod') },
+    { weight: 3, arbitrary: wrapped('&') },
     {
-      weight: 6,
-      arbitrary: word.map(
-        inner => (length: number) => (scope: Scope) =>
-          `(${inner(scope)}) mod ${Math.max(1, Math.min(length, Number(scope.modulus - 1n)))}`,
-      ),
+      weight: 5,
+      arbitrary: fc.nat(4).map(offset => () => (scope: Scope) => {
+        const variable = scope.loops[scope.loops.length - 1]
+        if (variable === undefined) return '0'
+        return [variable, variable, variable, `${variable} + 1`, `${variable} - 1`][offset]!
+      }),
     },
     { weight: 1, arbitrary: word.map(inner => () => inner) },
   )
@@ -324,7 +332,7 @@ const assertion = fc.tuple(fc.nat(20), fc.nat(20), fc.nat(11), fc.bigInt({ min: 
 
 /** A body one level further in, with its own labels. */
 function nested(body: Lines, scope: Scope, changes: Partial<Scope> = {}): string[] {
-  return body({ ...scope, ...changes, inside: scope.inside + 1 }).map(line => `  ${line}`)
+  return body({ ...scope, ...changes }).map(line => `  ${line}`)
 }
 
 const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; form: Lines }>(tie => ({
@@ -359,6 +367,7 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
     },
   ),
   form: fc.oneof(
+    { weight: 3, arbitrary: writtenOut(tie('statements')) },
     {
       weight: 2,
       arbitrary: fc
@@ -423,7 +432,11 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
               const step = by ? ` by ${by(scope) === '0' ? '1' : by(scope)}` : ''
               return [
                 `for ${variable} from ${start} ${down ? 'downto' : 'to'} ${stop}${step}`,
-                ...nested(body, scope, { loopNames: rest, readable: [...scope.readable, variable] }),
+                ...nested(body, scope, {
+                  loopNames: rest,
+                  loops: [...scope.loops, variable],
+                  readable: [...scope.readable, variable],
+                }),
                 'end',
               ]
             },
@@ -432,9 +445,45 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
   ),
 }))
 
+/** A loop written out, as drafts have it: by `while` or by labels, up or down, its variable moved at the end or early. */
+function writtenOut(body: fc.Arbitrary<Lines>): fc.Arbitrary<Lines> {
+  return fc.tuple(fc.nat(3), fc.boolean(), fc.nat(5), fc.nat(8), bound(), bound(), body).map(
+    ([test, down, form, touched, from, to, body]): Lines =>
+      scope => {
+        const [variable, ...rest] = scope.loopNames
+        if (variable === undefined) return nested(body, scope).map(line => line.slice(2))
+        const going = (down ? ['>', '!=', '>=', '>'] : ['<', '!=', '<=', '<'])[test]!
+        const ending = (down ? ['<=', '=', '<', '<='] : ['>=', '=', '>', '>='])[test]!
+        const changes = {
+          loopNames: rest,
+          readable: [...scope.readable, variable],
+          assignable: touched === 0 ? [...scope.assignable, variable] : scope.assignable,
+        }
+        const step = `${variable} <- ${variable} ${down ? '-' : '+'} 1`
+        const lines = nested(body, scope, changes)
+        const pass = form % 2 === 0 ? [...lines, `  ${step}`] : [`  ${step}`, ...lines]
+        const start = `${variable} <- ${from(scope)}`
+        if (form < 4) return [start, `while ${variable} ${going} ${to(scope)}`, ...pass, 'end']
+        const [again, done] = [`l${scope.fresh()}`, `l${scope.fresh()}`]
+        return [
+          start,
+          `${again}:`,
+          `if ${variable} ${ending} ${to(scope)} goto ${done}`,
+          ...pass,
+          `goto ${again}`,
+          `${done}:`,
+        ]
+      },
+  )
+}
+
 /** A bound or step of a loop: small most often, so that loops end. */
 function bound(): fc.Arbitrary<Word> {
-  return fc.oneof({ weight: 5, arbitrary: smallLiteral }, { weight: 1, arbitrary: expression })
+  return fc.oneof(
+    { weight: 5, arbitrary: smallLiteral },
+    { weight: 2, arbitrary: fc.constant((scope: Scope) => (scope.readable.includes('n') ? 'n' : '3')) },
+    { weight: 1, arbitrary: expression },
+  )
 }
 
 /** A list of statements: instructions, structured forms, jumps among its labels. */
