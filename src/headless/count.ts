@@ -1,6 +1,14 @@
 import { feedInput, readData, readInput, sizesOfData, trialSeed } from '../feed'
-import { INSTRUCTION_SETS, judgeRun, refuseClasses, tallyRun } from '../machine'
-import { bindPoint, type GridPoint, gridPoints, memoryProblem, runBinding, type Setting } from '../sweep'
+import { INSTRUCTION_SETS, judgeRun, tallyRun } from '../machine'
+import {
+  bindPoint,
+  type GridPoint,
+  gridPoints,
+  memoryProblem,
+  programUnder,
+  runBinding,
+  type Setting,
+} from '../sweep'
 import { type CountReport, writeCountJson } from './count-json'
 import { writeCountText } from './count-text'
 import type { Arguments, Flag } from './flags'
@@ -31,9 +39,9 @@ export async function count(given: Arguments, terminal: Terminal): Promise<Exit>
   const point = onlyPoint(setting, source)
   const way = readWay(given)
 
-  const refused = setting.off === 'refuse' ? refuseClasses(program, INSTRUCTION_SETS[point.set]) : []
-  if (refused.length > 0)
-    throw new Leave(EXIT.usage, refused.map(diagnostic => sayDiagnostic(source.file, diagnostic)).join('\n'))
+  const under = programUnder(program, point.set, setting.off)
+  if ('refused' in under)
+    throw new Leave(EXIT.usage, under.refused.map(each => sayDiagnostic(source.file, each)).join('\n'))
   const bound = bindPoint(program, setting, point)
   if (!('binding' in bound)) throw new Leave(EXIT.usage, sayAt(source.file, bound.span, bound.reason))
   const { binding } = bound

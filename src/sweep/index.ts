@@ -11,4 +11,5 @@ export type { GridPoint, PointResult, SweepResult, TrialTally, Verdict } from '.
 export { FEED_PATTERNS, type FeedPattern, type Setting, type SizeRange, type WidthChoice } from './setting'
 export { parseSizes, parseWhole } from './sizes'
 export { runSweep, type SweepOptions } from './sweep'
+export { programUnder } from './under'
 export { parseWidths, printWidth, widthAt } from './widths'

@@ -1,23 +1,22 @@
-import { type CompiledProgram, compileProgram, expandProgram } from '../engine'
+import { type CompiledProgram, compileProgram } from '../engine'
 import { feedInput, trialSeed } from '../feed'
 import {
   type Binding,
   bindProgram,
   DEFAULT_LIMITS,
-  INSTRUCTION_SETS,
   type Input,
   interpretProgram,
   judgeRun,
   type Limits,
   type Refusal,
   type RunResult,
-  refuseClasses,
   type Tally,
   tallyRun,
 } from '../machine'
 import type { Program } from '../routine'
 import type { GridPoint, PointResult, TrialTally, Verdict } from './result'
 import type { Setting } from './setting'
+import { programUnder } from './under'
 import { mergeVerdicts } from './verdicts'
 import { widthAt } from './widths'
 
@@ -74,11 +73,12 @@ export function bindPoint(
   const choice = setting.widths[point.widthChoice]
   const at = choice ? widthAt(choice, point.sizes) : { width: point.width }
   if ('problem' in at) return { reason: at.problem }
-  const set = INSTRUCTION_SETS[point.set]
-  const [refused] = setting.off === 'refuse' ? refuseClasses(program, set) : []
-  if (refused) return { reason: refused.message, span: refused.span }
-  const runnable = setting.off === 'expand' ? expandProgram(program, set) : program
-  const bound = bindProgram(runnable, { width: point.width, sizes: point.sizes, lets: setting.lets }, limits)
+  const under = programUnder(program, point.set, setting.off)
+  if ('refused' in under) {
+    const { message, span } = under.refused[0]!
+    return { reason: message, span }
+  }
+  const bound = bindProgram(under.program, { width: point.width, sizes: point.sizes, lets: setting.lets }, limits)
   return 'binding' in bound ? bound : bound.refusal
 }
 

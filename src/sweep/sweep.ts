@@ -1,9 +1,9 @@
-import { INSTRUCTION_SETS, refuseClasses } from '../machine'
 import type { Program } from '../routine'
 import { gridPoints } from './grid'
 import { type PointOptions, runPoint } from './point'
 import type { GridPoint, PointResult, SweepResult } from './result'
 import type { Setting } from './setting'
+import { programUnder } from './under'
 
 export interface SweepOptions extends Omit<PointOptions, 'breathe'> {
   /** Takes each result as it comes, in the grid's order, with how many there are and will be. */
@@ -16,8 +16,8 @@ const STRETCH = 12
 
 /**
  * Runs every point of a setting, small sizes before large ones at each width, and gives the results as they come. An
- * aborted sweep gives the points it got to, `complete` false. What a run gives does not depend on the instruction set, so
- * a point that differs from an earlier one in its set alone takes over that one's trials.
+ * aborted sweep gives the points it got to, `complete` false. A point that differs from an
+ * earlier one in its set alone, and runs the same program, takes over that one's trials: they would be the same.
  */
 export async function runSweep(
   program: Program,
@@ -28,13 +28,17 @@ export async function runSweep(
   const grid = gridPoints(setting, program)
   const breathe = makeBreath(signal)
   const points: PointResult[] = []
-  const known = new Map<string, PointResult>()
+  const known = new Map<Program, Map<string, PointResult>>()
   for (const point of grid) {
-    const earlier = known.get(keyOf(point))
-    const taken = earlier && runsUnder(program, point) ? { ...earlier, point } : undefined
-    const result = taken ?? (await runPoint(program, setting, point, { ...options, breathe }))
+    const under = programUnder(program, point.set, setting.off)
+    const runs = 'program' in under ? under.program : undefined
+    const earlier = runs && known.get(runs)?.get(keyOf(point))
+    const result = earlier
+      ? { ...earlier, point }
+      : await runPoint(program, setting, point, { ...options, breathe })
     if (!result || (await breathe())) break
-    if (result.status !== 'refused') known.set(keyOf(point), result)
+    if (runs && result.status !== 'refused')
+      known.set(runs, (known.get(runs) ?? new Map<string, PointResult>()).set(keyOf(point), result))
     points.push(result)
     onPoint?.(result, points.length, grid.length)
   }
@@ -44,10 +48,6 @@ export async function runSweep(
 
 function keyOf({ width, sizes }: GridPoint): string {
   return `${width};${Object.values(sizes).join()}`
-}
-
-function runsUnder(program: Program, point: GridPoint): boolean {
-  return refuseClasses(program, INSTRUCTION_SETS[point.set]).length === 0
 }
 
 /** Lets the event loop turn once a stretch; says whether to stop. */

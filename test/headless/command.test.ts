@@ -243,6 +243,21 @@ describe('count', () => {
     expect(error).toMatch(/^station\.tally:26:\d+: .*multiply.*no-multiply/)
   })
 
+  test('a class that is off is expanded where that is asked for, and says so', async () => {
+    const line = 'count station.tally --routine scaled --w 16 --set no-multiply --off expand --json --seed 3'
+    const { exit, out, error } = await tallyword(line)
+    expect({ exit, error }).toEqual({ exit: 0, error: '' })
+    const { time, byClass, outputs, audit } = JSON.parse(out)
+    expect(byClass.multiply).toBe(0)
+    expect(time).toBeGreaterThan(20)
+    expect(audit).toMatchObject([
+      { kind: 'expanded', line: 26, message: expect.stringContaining('multiply is off') },
+    ])
+    const full = JSON.parse((await tallyword(line.replace('no-multiply', 'full'))).out)
+    expect(full.outputs).toEqual(outputs)
+    expect(await tallyword(`${line} --way reference`)).toEqual({ exit, out, error })
+  })
+
   test('a run that fails ends with 3 and gives no count', async () => {
     const { exit, out, error } = await tallyword(
       'count station.tally --routine share --w 16 --set extended --input -',

@@ -153,6 +153,29 @@ describe('a sweep', () => {
     expect(points[1]).toMatchObject({ status: 'refused', line: 5 })
   })
 
+  test('expands what is off where it is told to, each set on its own', async () => {
+    const square = program(
+      'routine square\n  in a[n]\n  out s\n  check s = a[0]^2 mod 2^w\nbegin\n  s <- a[0] * a[0]\nend\n',
+    )
+    const given = setting({
+      sizes: { n: '1,2' },
+      widths: '16',
+      sets: ['full', 'no-multiply', 'add-only'],
+      off: 'expand',
+      trials: 3,
+    })
+    const { points } = await runSweep(square, given)
+    expect(points.map(({ status }) => status)).toEqual(Array(6).fill('done'))
+    const times = points.map(point => timeAt(point)[0])
+    expect(times[0]).toBe(3)
+    expect(times[2]).toBeGreaterThan(20)
+    expect(times[4]).toBe(times[0])
+    for (const point of points) {
+      if (point.status === 'done') expect(point.verdicts.map(({ outcome }) => outcome)).toEqual(['holds'])
+      expect(await runPoint(square, given, point.point, { way: 'reference' })).toEqual(point)
+    }
+  })
+
   test('says why a width gives no machine', async () => {
     const { points } = await runSweep(total, setting({ sizes: { n: '2,8' }, widths: 'lg(n)' }))
     expect(points[0]).toMatchObject({ status: 'refused', reason: 'w = lg(n) is 1, and words have 2 to 4096 bits' })
