@@ -3,6 +3,7 @@ import { mkdtemp, readFile, rm, writeFile } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join, resolve } from 'node:path'
 import { promisify } from 'node:util'
+import type { Locator } from 'playwright-core'
 import { describe, expect, test } from 'vitest'
 import { openWorkbench } from './browser'
 import {
@@ -113,14 +114,21 @@ describe('a draft of the author', () => {
 
   test('moves its counts along with its lines', async () => {
     const { page, close } = await openDemo()
-    const first = page.locator('.margin .cell-total')
-    const before = await first.boundingBox()
     await page.getByLabel('Draft in tally notation').click()
     await page.keyboard.press('ControlOrMeta+Home')
+    const height = async (part: Locator) => (await part.boundingBox())!.y
+    const beside = async () =>
+      Math.round(
+        (await height(page.locator('.margin .cell-total'))) -
+          (await height(page.locator('.cm-line', { hasText: 'routine bylevel' }))),
+      )
+    const place = async () => height(page.locator('.cm-line', { hasText: 'routine bylevel' }))
+    expect(await beside()).toBe(0)
+    const before = await place()
     await page.keyboard.press('Enter')
     await page.keyboard.press('Enter')
-    const after = await first.boundingBox()
-    expect(Math.round(after!.y - before!.y)).toBe(34)
+    expect(await beside()).toBe(0)
+    expect(Math.round((await place()) - before)).toBe(34)
     await close()
   })
 
@@ -231,7 +239,7 @@ end
     await expect.poll(async () => (await outcomes(page)).holds).toBeGreaterThanOrEqual(1)
     const started = Date.now()
     await page.getByRole('button', { name: /^Cancel, keep/ }).click()
-    await page.getByText(/^Cancelled: /).waitFor()
+    await page.locator('.status .big', { hasText: 'Cancelled: ' }).waitFor()
     expect(Date.now() - started).toBeLessThan(1500)
     expect((await outcomes(page)).holds).toBeGreaterThanOrEqual(1)
     // The worker was replaced where it did not answer: the next sweep runs.

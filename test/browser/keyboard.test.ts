@@ -54,7 +54,7 @@ test('everything is reached and done from the keyboard', async () => {
   await page.locator('.cm-content').focus()
   await page.keyboard.press('ControlOrMeta+Home')
   await page.keyboard.press('Tab')
-  await expect.poll(() => said(page.locator('.cm-line').first())).toMatch(/^ {2}#/)
+  await expect.poll(() => codeOf(page)).toMatch(/^ {2}#/)
   await page.keyboard.press('ControlOrMeta+Enter')
   await page.locator('.draft:not(.is-stale)').waitFor()
   await sweepEnds(page)

@@ -53,6 +53,7 @@ describe('what is kept', () => {
     expect(damagedTexts(drawer)).toEqual(['first', 'second'])
     discardDamaged(drawer)
     expect(damagedTexts(drawer)).toEqual([])
+    expect(findKept(drawer)).toEqual({ kind: 'nothing' })
   })
 
   test('takes a damaged list of damaged texts for one of them', () => {

@@ -1,6 +1,12 @@
 import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest'
 import type { FromWorker, SweepRequest, ToWorker } from '../../src/workbench/sweeper/messages'
-import { createSweeper, PATIENCE, type SweepListener, type WorkerLike } from '../../src/workbench/sweeper/sweeper'
+import {
+  createSweeper,
+  PACE,
+  PATIENCE,
+  type SweepListener,
+  type WorkerLike,
+} from '../../src/workbench/sweeper/sweeper'
 
 class FakeWorker implements WorkerLike {
   readonly taken: ToWorker[] = []
@@ -42,6 +48,8 @@ function request(number: number): SweepRequest {
   return { number, text: '', routine: 'r', setting: {} as SweepRequest['setting'] }
 }
 
+const RESULT = { kind: 'result', number: 1, result: {} } as FromWorker
+
 function listener() {
   return { results: vi.fn<SweepListener['results']>(), ended: vi.fn<SweepListener['ended']>() }
 }
@@ -55,7 +63,7 @@ describe('the sweeper', () => {
     expect(workers).toHaveLength(1)
     const heard = listener()
     sweeper.start(request(1), heard)
-    workers[0]?.say({ kind: 'results', number: 1, results: [] })
+    workers[0]?.say(RESULT)
     workers[0]?.say({ kind: 'ended', number: 1, complete: true })
     expect(heard.results).toHaveBeenCalledOnce()
     expect(heard.ended).toHaveBeenCalledExactlyOnceWith('done', undefined)
@@ -81,11 +89,37 @@ describe('the sweeper', () => {
     const heard = listener()
     sweeper.start(request(1), heard)
     sweeper.cancel()
-    workers[0]?.say({ kind: 'results', number: 1, results: [] })
+    workers[0]?.say(RESULT)
     workers[0]?.say({ kind: 'ended', number: 1, complete: false })
+    expect(heard.results).toHaveBeenCalledOnce()
     vi.advanceTimersByTime(10 * PATIENCE)
     expect(heard.ended).toHaveBeenCalledExactlyOnceWith('cancelled', undefined)
     expect(workers[0]?.terminated).toBe(false)
+  })
+
+  test('passes results on together, now and then, and the last before the end', () => {
+    const { workers, sweeper } = setUp()
+    const heard = listener()
+    sweeper.start(request(1), heard)
+    workers[0]?.say(RESULT)
+    workers[0]?.say(RESULT)
+    expect(heard.results).not.toHaveBeenCalled()
+    vi.advanceTimersByTime(PACE)
+    workers[0]?.say(RESULT)
+    workers[0]?.say({ kind: 'ended', number: 1, complete: true })
+    expect(heard.results.mock.calls.map(([results]) => results.length)).toEqual([2, 1])
+    expect(heard.results.mock.invocationCallOrder[1]).toBeLessThan(heard.ended.mock.invocationCallOrder[0]!)
+  })
+
+  test('keeps the points that came before a worker that does not answer', () => {
+    const { workers, sweeper } = setUp()
+    const heard = listener()
+    sweeper.start(request(1), heard)
+    workers[0]?.say(RESULT)
+    sweeper.cancel()
+    vi.advanceTimersByTime(PATIENCE)
+    expect(heard.results).toHaveBeenCalledOnce()
+    expect(heard.ended).toHaveBeenCalledOnce()
   })
 
   test('runs the next sweep in a new worker where the old one had to go', () => {
@@ -113,7 +147,7 @@ describe('the sweeper', () => {
     workers[0]?.say({ kind: 'ended', number: 1, complete: false })
     expect(first.ended).toHaveBeenCalledExactlyOnceWith('cancelled', undefined)
     expect(workers[0]?.taken.at(-1)).toMatchObject({ kind: 'sweep', request: { number: 3 } })
-    workers[0]?.say({ kind: 'results', number: 1, results: [] })
+    workers[0]?.say(RESULT)
     expect(first.results).not.toHaveBeenCalled()
     expect(third.results).not.toHaveBeenCalled()
   })

@@ -1,4 +1,4 @@
-import { defaultKeymap, history, historyKeymap, indentLess, indentMore } from '@codemirror/commands'
+import { defaultKeymap, history, historyKeymap, indentLess, indentMore, isolateHistory } from '@codemirror/commands'
 import { indentService, indentUnit } from '@codemirror/language'
 import { Annotation, EditorState, type Extension } from '@codemirror/state'
 import {
@@ -118,6 +118,7 @@ export function replaceText(view: EditorView, text: string): void {
   view.dispatch({
     changes: { from: 0, to: doc.length, insert: text },
     selection: { anchor: 0 },
-    annotations: fromStore.of(true),
+    // A change by itself: undoing it does not take along what was typed just before.
+    annotations: [fromStore.of(true), isolateHistory.of('full')],
   })
 }

@@ -1,3 +1,4 @@
+import { isolateHistory } from '@codemirror/commands'
 import { type EditorState, type Range, StateEffect, StateField, type Text } from '@codemirror/state'
 import { Decoration, type DecorationSet, EditorView, WidgetType } from '@codemirror/view'
 import type { Diagnostic } from '../../../grammar'
@@ -123,6 +124,7 @@ export function applyFix(view: EditorView, { fix }: Diagnostic): boolean {
     changes: set,
     ...(last && { selection: { anchor: set.mapPos(last.to, 1) } }),
     userEvent: 'input.fix',
+    annotations: isolateHistory.of('full'),
     scrollIntoView: true,
   })
   view.focus()

@@ -41,7 +41,7 @@ export function findKept(drawer: Drawer): Found {
   if (text === null) return { kind: 'nothing' }
   const read = readKept(text)
   if (typeof read !== 'string') return { kind: 'kept', kept: read }
-  setAside(drawer, text)
+  if (setAside(drawer, text)) discard(drawer, KEPT_KEY)
   return { kind: 'damaged', reason: read, text }
 }
 
@@ -125,19 +125,27 @@ export function damagedTexts(drawer: Drawer): readonly string[] {
   return [text]
 }
 
-function setAside(drawer: Drawer, text: string): void {
+/** Whether there was room for it. */
+function setAside(drawer: Drawer, text: string): boolean {
   const texts = damagedTexts(drawer)
-  if (texts.includes(text)) return
+  if (texts.includes(text)) return true
   try {
     drawer.setItem(DAMAGED_KEY, JSON.stringify([...texts, text]))
+    return true
   } catch {
-    // No room for a copy: the page still has the text at hand, and says so.
+    return false
   }
 }
 
+/** Lets go of every damaged text, where it stood as well as where it was set aside. */
 export function discardDamaged(drawer: Drawer): void {
+  discard(drawer, DAMAGED_KEY)
+  if (findKept(drawer).kind === 'damaged') discard(drawer, KEPT_KEY)
+}
+
+function discard(drawer: Drawer, key: string): void {
   try {
-    drawer.removeItem(DAMAGED_KEY)
+    drawer.removeItem(key)
   } catch {
     // It comes up again at the next visit.
   }

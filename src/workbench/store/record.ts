@@ -26,7 +26,7 @@ export interface SweepRecord {
   /** Why it crashed: a fault of ours, told in full. */
   readonly crash?: string
   readonly startedAt: number
-  /** Milliseconds until the last result; of a running sweep, so far. */
+  /** Milliseconds until its end; of a running sweep, until the last result so far. */
   readonly elapsed: number
 }
 

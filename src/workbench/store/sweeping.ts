@@ -87,9 +87,9 @@ export function sweepingOf(store: StoreApi<WorkbenchState>, world: World): Sweep
           if (store.getState().record?.number === own) readOn(false)
         },
         ended(end, crash) {
-          change(own, ({ status, elapsed }) => ({
+          change(own, ({ status }) => ({
             status: status === 'running' ? end : status,
-            elapsed: end === 'done' ? world.now() - startedAt : elapsed,
+            elapsed: world.now() - startedAt,
             ...(crash !== undefined && { crash }),
           }))
           if (store.getState().record?.number === own) readOn(true)

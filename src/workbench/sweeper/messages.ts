@@ -16,8 +16,8 @@ export type ToWorker =
   | { readonly kind: 'cancel'; readonly number: number }
 
 export type FromWorker =
-  /** Results since the last batch, in the grid's order. */
-  | { readonly kind: 'results'; readonly number: number; readonly results: readonly PointResult[] }
+  /** In the grid's order. */
+  | { readonly kind: 'result'; readonly number: number; readonly result: PointResult }
   | { readonly kind: 'ended'; readonly number: number; readonly complete: boolean }
   /** A fault of ours. */
   | { readonly kind: 'crashed'; readonly number: number; readonly message: string }

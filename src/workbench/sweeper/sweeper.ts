@@ -5,6 +5,7 @@ export type SweepEnd = 'done' | 'cancelled' | 'crashed'
 
 /** Takes what comes of one sweep. */
 export interface SweepListener {
+  /** Results since the last call, in the grid's order; now and then, so that a page has time to draw. */
   results(results: readonly PointResult[]): void
   /** Called once, last. `crash` is set where `end` is `crashed`. */
   ended(end: SweepEnd, crash?: string): void
@@ -29,12 +30,20 @@ export interface WorkerLike {
 /** Milliseconds that a worker has to answer a cancel before it is replaced. */
 export const PATIENCE = 200
 
+/** Milliseconds between calls of `results`: often enough to look alive. */
+export const PACE = 50
+
 interface Running {
   readonly request: SweepRequest
   readonly listener: SweepListener
   /** Set once it is to stop: ends its patience. */
   deadline?: ReturnType<typeof setTimeout>
+  /** Results that have not been passed on, and when they will be. */
+  waiting: PointResult[]
+  due?: ReturnType<typeof setTimeout> | undefined
 }
+
+type Asked = Pick<Running, 'request' | 'listener'>
 
 /**
  * A sweeper over workers that `spawn` makes. A worker that crashes, or that does not answer a cancel in time, is terminated and the
@@ -44,7 +53,7 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
   let worker: WorkerLike | undefined
   let running: Running | undefined
   /** Asked for while an earlier sweep was still stopping. */
-  let next: Omit<Running, 'deadline'> | undefined
+  let next: Asked | undefined
 
   // Made ahead of the first sweep, which then need not wait for its start.
   worker = hire()
@@ -71,8 +80,9 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
   function take(message: FromWorker): void {
     if (message.number !== running?.request.number) return
     switch (message.kind) {
-      case 'results':
-        running.listener.results(message.results)
+      case 'result':
+        running.waiting.push(message.result)
+        running.due ??= setTimeout(passOn, PACE, running)
         break
       case 'ended':
         end(message.complete ? 'done' : 'cancelled')
@@ -82,11 +92,20 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
     }
   }
 
+  function passOn(of: Running): void {
+    clearTimeout(of.due)
+    of.due = undefined
+    const results = of.waiting
+    of.waiting = []
+    if (results.length > 0) of.listener.results(results)
+  }
+
   function end(how: SweepEnd, crash?: string): void {
     const ended = running
     running = undefined
     if (ended) {
       clearTimeout(ended.deadline)
+      passOn(ended)
       ended.listener.ended(how, crash)
     }
     const following = next
@@ -94,9 +113,9 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
     if (following) begin(following)
   }
 
-  function begin({ request, listener }: Omit<Running, 'deadline'>): void {
+  function begin({ request, listener }: Asked): void {
     worker ??= hire()
-    running = { request, listener }
+    running = { request, listener, waiting: [] }
     worker.postMessage({ kind: 'sweep', request })
   }
 
