@@ -169,7 +169,7 @@ describe('a sweep', () => {
     const times = points.map(point => timeAt(point)[0])
     expect(times[0]).toBe(3)
     expect(times[2]).toBeGreaterThan(20)
-    expect(times[4]).toBe(times[0])
+    expect(times[4]).toBeGreaterThan(20)
     for (const point of points) {
       if (point.status === 'done') expect(point.verdicts.map(({ outcome }) => outcome)).toEqual(['holds'])
       expect(await runPoint(square, given, point.point, { way: 'reference' })).toEqual(point)
