@@ -1,5 +1,5 @@
 /** A routine of about `count` lines that mixes every form: for timing what leads from text to module. */
-export function lines(count: number): string {
+export function longRoutine(count: number): string {
   const stretch = (at: number) => [
     `  x${at} <- a[i] + ${at}`,
     `  y <- (x${at} << 3) xor (x${at} >> 5)`,
