@@ -1,4 +1,4 @@
-import { type IToken, Lexer } from './chevrotain'
+import { type IToken, Lexer, type TokenType } from './chevrotain'
 import type { Span } from './span'
 import * as T from './tokens'
 import type { Comment } from './tree'
@@ -55,7 +55,7 @@ export function restSpan(line: Line, from: number): Span {
 }
 
 /** Words that begin an instruction or a form: where a source line starts with one, nothing before it goes on. */
-const STARTERS: ReadonlySet<unknown> = new Set([
+const STARTERS: ReadonlySet<TokenType> = new Set([
   T.Routine,
   T.Begin,
   T.End,
@@ -73,17 +73,29 @@ const STARTERS: ReadonlySet<unknown> = new Set([
 ])
 /** Words with which other languages close a form. */
 export const FOREIGN_ENDS = /^(?:end_?(?:if|while|for|do|loop|procedure|proc|function|routine|repeat)|fi|od|wend)$/i
-const OPENING: ReadonlySet<unknown> = new Set([T.LeftParen, T.LeftSquare, T.LeftCeil, T.LeftFloor])
-const CLOSING: ReadonlySet<unknown> = new Set([T.RightParen, T.RightSquare, T.RightCeil, T.RightFloor])
+const OPENING: ReadonlySet<TokenType> = new Set([T.LeftParen, T.LeftSquare, T.LeftCeil, T.LeftFloor])
+const CLOSING: ReadonlySet<TokenType> = new Set([T.RightParen, T.RightSquare, T.RightCeil, T.RightFloor])
 /** Besides infix operators: what a line may end in and go on. */
-const LINKS: ReadonlySet<unknown> = new Set([T.Comma, T.Gives, T.Range, T.Not, T.Tilde])
+const LINKS: ReadonlySet<TokenType> = new Set([T.Comma, T.Gives, T.Range, T.Not, T.Tilde])
 
-/** Whether a line of tokens, ending as it does, goes on in the next. */
-function goesOn(tokens: readonly Mark[], open: number): boolean {
-  if (open > 0) return true
+/** Words that stand between operands, though they can be names as well. */
+const BETWEEN: ReadonlySet<TokenType> = new Set([T.In, T.From, T.To, T.Downto, T.By, T.Then, T.Do])
+
+function endsOperand(type: TokenType): boolean {
+  return type === T.Numeral || type === T.RightParen || type === T.RightSquare || T.isOf(type, T.Name)
+}
+
+function beginsOperand(type: TokenType): boolean {
+  return type === T.Numeral || (T.isOf(type, T.Name) && !BETWEEN.has(type))
+}
+
+/** Whether a line of tokens, ending as it does with `open` brackets open, goes on in a line that begins with `next`. */
+function goesOn(tokens: readonly Mark[], open: number, next: TokenType): boolean {
   const last = tokens[tokens.length - 1]
-  if (!last) return false
+  if (!last) return open > 0
   const type = last.tokenType
+  // Nothing joins two operands: the bracket has been forgotten.
+  if (open > 0) return !(endsOperand(type) && beginsOperand(next))
   if (LINKS.has(type) || T.isOf(type, T.Infix) || T.isOf(type, T.Assign)) return true
   return type === T.Colon && tokens.some(token => T.isOf(token.tokenType, T.Quantifier)) && tokens.length > 2
 }
@@ -95,12 +107,10 @@ function startsAnew(tokens: readonly Mark[], from: number): boolean {
   const second = tokens[from + 1]?.tokenType
   if (first === T.Name && (!second || second === T.Newline) && FOREIGN_ENDS.test(tokens[from]!.image)) return true
   if (second === T.Colon && T.isOf(first, T.Name)) return true
-  if (
-    T.DECLARATION_WORDS.has(first) &&
-    second &&
-    (T.isOf(second, T.Name) || second === T.Not || second === T.Numeral)
-  )
-    return true
+  if (second && T.DECLARATION_WORDS.has(first)) {
+    const condition = first === T.Need || first === T.Check
+    if (T.isOf(second, T.Name) || (condition && (second === T.Not || second === T.Numeral))) return true
+  }
   for (let at = from; at < tokens.length; at++) {
     const type = tokens[at]!.tokenType
     if (type === T.Newline) return false
@@ -164,7 +174,8 @@ export function readLines(text: string): Reading {
         // Blank lines and comments in between do not end a line that goes on.
         let ahead = at + 1
         while (tokens[ahead]?.tokenType === T.Newline) ahead++
-        if (!goesOn(current, open) || ahead >= tokens.length || startsAnew(tokens, ahead)) close()
+        const following = tokens[ahead]
+        if (!following || !goesOn(current, open, following.tokenType) || startsAnew(tokens, ahead)) close()
       }
       line++
       lineStart = next

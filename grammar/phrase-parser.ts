@@ -12,11 +12,14 @@ import { arrangeParts, type Part, type Phrase } from './phrase'
 import { joinSpans } from './span'
 import * as T from './tokens'
 
+/** What an operand may begin with, in plain words. */
+const OPERAND = 'a name, a number or `(`'
+
 /** Messages say what was expected, in plain words; what was found is the line reader's to say. */
 const expectations: IParserErrorMessageProvider = {
   buildMismatchTokenMessage: ({ expected }) => tokenLabel(expected),
   buildNotAllInputParsedMessage: () => 'the end of the line',
-  buildNoViableAltMessage: ({ customUserDescription }) => customUserDescription ?? '',
+  buildNoViableAltMessage: ({ customUserDescription }) => customUserDescription ?? OPERAND,
   buildEarlyExitMessage: ({ customUserDescription }) => customUserDescription ?? '',
 }
 
@@ -76,7 +79,7 @@ export class PhraseParser extends EmbeddedActionsParser {
         { ALT: () => this.SUBRULE(this.indirect) },
         { ALT: () => this.SUBRULE(this.rounded) },
       ],
-      ERR_MSG: 'a name, a number or `(`',
+      ERR_MSG: OPERAND,
     }
     const phrase = this.OR<Phrase>(this.operands)
     this.ACTION(() => parts.push(phrase))

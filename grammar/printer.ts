@@ -237,7 +237,9 @@ function wrap(text: string): string[] {
     part += piece
     for (const sign of piece) open += sign === '(' || sign === '[' ? 1 : sign === ')' || sign === ']' ? -1 : 0
     if (open > 0) continue
-    if (line !== '' && line.length + part.length > WIDEST) {
+    // `name :` at the head of a line would be a label.
+    const label = /^[^ ]+ : /.test(part)
+    if (line !== '' && !label && line.length + part.length > WIDEST) {
       lines.push(line.trimEnd())
       line = '    '
     }
