@@ -127,6 +127,14 @@ describe('imports', () => {
   })
 })
 
+test('every package that a room imports is a listed dependency', () => {
+  const { dependencies } = JSON.parse(readFileSync(join(ROOT, 'package.json'), 'utf8'))
+  const packages = imports
+    .map(({ module }) => /^(?!\.|node:)((?:@[^/]+\/)?[^/]+)/.exec(module)?.[1])
+    .filter(name => name !== undefined)
+  expect([...new Set(packages)].filter(name => !Object.hasOwn(dependencies, name))).toEqual([])
+})
+
 test('the core compiles without the DOM and without Node', () => {
   const tsc = join(ROOT, 'node_modules', '.bin', 'tsc')
   const { stdout, status } = spawnSync(tsc, ['-p', join(import.meta.dirname, 'core.tsconfig.json')], {

@@ -5,7 +5,7 @@ import { sayPlace, saySetting } from './say'
 import { GRID_FLAGS } from './setting-flags'
 import { readSource } from './source'
 import { complainOf, sweepSource } from './sweep'
-import { type Column, groupDigits, layTable } from './table'
+import { type Column, layTable, sayFigures } from './table'
 import { type Exit, misuse, type Terminal } from './terminal'
 
 export const CLAIMS_FLAGS: readonly Flag[] = GRID_FLAGS
@@ -53,14 +53,14 @@ function judge(points: readonly Done[], at: number): [string, string] {
     const [first] = bad
     if (first) {
       const where = `at ${bad.length} of ${points.length} points, first ${sayPlace(first.point)}`
-      return [outcome, `${where}${sayFigures(first.verdicts[at]!)}`]
+      return [outcome, `${where}${sayVerdict(first.verdicts[at]!, first.trials.length)}`]
     }
   }
   return ['holds', `at all ${points.length} points`]
 }
 
-function sayFigures({ count, bound, trial, reason }: Verdict): string {
-  const figures = count === undefined || bound === undefined ? '' : `: ${groupDigits(count)} against ${bound}`
-  const which = trial === undefined ? '' : ` (trial ${trial + 1})`
+function sayVerdict({ count, bound, trial, reason }: Verdict, trials: number): string {
+  const figures = count === undefined || bound === undefined ? '' : `: ${sayFigures(count, bound)}`
+  const which = trial === undefined || trials === 1 ? '' : ` (trial ${trial + 1})`
   return `${figures}${which}${reason === undefined ? '' : `: ${reason}`}`
 }

@@ -3,7 +3,7 @@ import { OPERATION_CLASSES } from '../routine'
 import { printCharges } from '../sweep'
 import { type CountReport, outputsOf } from './count-json'
 import { notesOf } from './notes'
-import { type Column, groupDigits, layTable } from './table'
+import { type Column, groupDigits, layTable, sayFigures } from './table'
 
 /** Words of an array that are shown; the JSON has them all. */
 const SHOWN_WORDS = 8
@@ -125,7 +125,7 @@ function verdicts({ binding, verdicts }: CountReport): string {
   const rows = verdicts.map(({ kind, place, line, outcome, count, bound, reason }) => {
     const { span } = (kind === 'check' ? checks : claims)[place]!
     const source = text.slice(span.start, span.end).replace(/\s+/g, ' ')
-    const figures = count === undefined || bound === undefined ? '' : `${groupDigits(count)} against ${bound}`
+    const figures = count === undefined || bound === undefined ? '' : sayFigures(count, bound)
     return [String(line), outcome, source, reason ?? figures]
   })
   if (rows.length === 0) return ''

@@ -24,6 +24,11 @@ function lengthOf(text: string): number {
   return [...text].length
 }
 
+/** A count beside its bound, which is exact text: digits are grouped where it is a whole number. */
+export function sayFigures(count: number, bound: string): string {
+  return `${groupDigits(count)} against ${/^\d+$/.test(bound) ? groupDigits(BigInt(bound)) : bound}`
+}
+
 /** 1234567 as 1,234,567. */
 export function groupDigits(value: number | bigint): string {
   return String(value).replace(/\B(?=(\d{3})+$)/g, ',')
