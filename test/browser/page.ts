@@ -63,7 +63,7 @@ export async function draftText(page: Page): Promise<string> {
 /** The count beside a line of the draft: the row for screen readers, which says the same as the margin. */
 export async function countAt(page: Page, line: number): Promise<number> {
   const row = page.locator('table.sr tr', { has: page.locator(`th[scope=row]:text-is("${line}")`) })
-  return Number(await said(row.locator('td').last()))
+  return Number(await said(row.locator('td').nth(1)))
 }
 
 /** Cells of the grid by what they show. */

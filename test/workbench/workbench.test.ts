@@ -200,16 +200,31 @@ describe('results', () => {
       { line: 4, kind: 'verdict', word: 'holds' },
       { line: 5, kind: 'verdict', word: 'holds' },
     ])
+    expect(cells.some(cell => cell.kind === 'time' && cell.expanded !== undefined)).toBe(false)
     // A while tested nine times, its body run eight: 9 compares and 8 jumps.
     expect(cells.find(({ line }) => line === 9)).toMatchObject({ time: 17 })
   })
 })
 
+test('the margin says where a class that is off was expanded, and at what mean cost', async () => {
+  const { workbench, sweeper, state } = setUp(SUM.replace('x + a[i]', 'x + a[i] * n'))
+  workbench.takeSetting({ ...state().settingText, sets: ['full', 'no-multiply'], widths: '8', first: '4' })
+  workbench.sweep()
+  await sweeper.run()
+  const { record } = state()
+  const notes = [0, 1].map(point =>
+    marginCells(record!, { point, trial: 0 }).flatMap(cell =>
+      cell.kind === 'time' && cell.expanded !== undefined ? [cell.line] : [],
+    ),
+  )
+  expect(notes).toEqual([[], [10]])
+})
+
 describe('the draft', () => {
   test('falls back to its first routine where the picked one is renamed', () => {
     const { workbench, state } = setUp(DEMO_DRAFT.text)
-    workbench.pickRoutine('todatum')
-    workbench.write(DEMO_DRAFT.text.replace('routine todatum', 'routine level'))
+    workbench.pickRoutine('daysum')
+    workbench.write(DEMO_DRAFT.text.replace('routine daysum', 'routine level'))
     workbench.checkNow()
     expect(state().checked.program?.routine.name).toBe('bylevel')
   })
@@ -268,10 +283,10 @@ describe('the demo', () => {
   test('has no errors, and fits its setting', () => {
     const { state, workbench } = setUp(DEMO_DRAFT.text)
     expect(state().checked.diagnostics).toEqual([])
-    expect(state().checked.names).toEqual(['bylevel', 'todatum'])
+    expect(state().checked.names).toEqual(['bylevel', 'daysum'])
     expect(obstacle(state())).toBeUndefined()
-    workbench.pickRoutine('todatum')
-    expect(state().checked.program?.routine.name).toBe('todatum')
+    workbench.pickRoutine('daysum')
+    expect(state().checked.program?.routine.name).toBe('daysum')
     expect(obstacle(state())).toBeUndefined()
   })
 })

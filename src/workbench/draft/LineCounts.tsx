@@ -15,6 +15,7 @@ export function LineCounts(props: { readonly record: SweepRecord; readonly readi
           <th scope="col">line</th>
           <th scope="col">text</th>
           <th scope="col">operations or verdict</th>
+          <th scope="col">note</th>
         </tr>
       </thead>
       <tbody>
@@ -22,7 +23,8 @@ export function LineCounts(props: { readonly record: SweepRecord; readonly readi
           <tr key={cell.line}>
             <th scope="row">{cell.line}</th>
             <td>{lines[cell.line - 1]?.trim()}</td>
-            <td>{cell.kind === 'verdict' ? cell.word : cell.time}</td>
+            <td>{cell.kind === 'verdict' ? cell.word : String(cell.time)}</td>
+            <td>{cell.kind === 'time' && cell.expanded !== undefined && 'expanded'}</td>
           </tr>
         ))}
       </tbody>

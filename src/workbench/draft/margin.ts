@@ -105,6 +105,12 @@ class CellMarker extends GutterMarker {
       const bar = document.createElement('s')
       bar.style.width = `${Math.max(cell.bar * BAR, cell.time > 0 ? 1 : 0)}px`
       row.append(bar)
+      if (cell.expanded !== undefined) {
+        const note = document.createElement('em')
+        note.textContent = 'expanded'
+        note.title = `${cell.expanded.toFixed(1)} operations a use on average, all of them in this line's count`
+        row.append(note)
+      }
     }
     return row
   }

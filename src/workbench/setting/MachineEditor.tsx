@@ -1,12 +1,12 @@
 import { useState } from 'react'
-import { INSTRUCTION_SETS, type InstructionSetName } from '../../machine/machine'
+import type { InstructionSetName, OffPolicy } from '../../machine/machine'
 import { splitList } from '../../sweep/misread'
 import { parseWidths } from '../../sweep/widths'
 import { DashKey, MarkerKey } from '../marks/Marker'
 import { useWorkbench } from '../use'
 import { Forecast } from './Forecast'
 import { type EditorProps, marking, Problem, Row } from './field'
-import { Refusals } from './Refusals'
+import { OffUses } from './OffUses'
 import { SET_ORDER } from './sentence-parts'
 
 interface Chip {
@@ -20,6 +20,11 @@ const SET_LABELS: Readonly<Record<InstructionSetName, readonly [string, string]>
   'add-only': ['by addition alone', 'add'],
   extended: ['with every class', 'divide and bitscan too'],
 }
+
+const OFF_POLICIES: readonly (readonly [OffPolicy, string])[] = [
+  ['expand', 'is expanded and counted'],
+  ['refuse', 'is refused'],
+]
 
 /** Word widths and instruction sets. */
 export function MachineEditor(props: EditorProps) {
@@ -51,7 +56,22 @@ export function MachineEditor(props: EditorProps) {
           ))}
         </div>
         <Problem problems={problems} field="sets" />
-        <Refusals sets={text.sets.map(set => INSTRUCTION_SETS[set])} />
+      </Row>
+      <Row label="What is off">
+        <div className="options">
+          {OFF_POLICIES.map(([off, word]) => (
+            <label key={off} className="option">
+              <input
+                type="radio"
+                name="off"
+                checked={text.off === off}
+                onChange={() => onChange({ ...text, off })}
+              />
+              <span>{word}</span>
+            </label>
+          ))}
+        </div>
+        <OffUses sets={text.sets} off={text.off} />
       </Row>
       <Forecast setting={props.setting} />
     </>

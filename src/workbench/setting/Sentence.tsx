@@ -1,5 +1,5 @@
 import { Fragment, type ReactNode } from 'react'
-import type { Charges, InstructionSetName } from '../../machine/machine'
+import type { Charges, InstructionSetName, OffPolicy } from '../../machine/machine'
 import type { SizeRange, WidthChoice } from '../../sweep/setting'
 import { printWidth } from '../../sweep/widths'
 import { SizeValue } from '../marks/Count'
@@ -19,11 +19,13 @@ export interface SentenceProps {
   readonly parts: SettingParts
   /** Slots whose editor is open. */
   readonly open: readonly SlotName[]
+  /** The routine uses a class that a picked set lacks, so that what becomes of it belongs to the sentence. */
+  readonly leansOnOff: boolean
   readonly onOpen: (slot: SlotName) => void
 }
 
 /** The setting as the sentence that opens a theorem. It is the legend of every figure as well. */
-export function Sentence({ shape, text, parts, open, onOpen }: SentenceProps) {
+export function Sentence({ shape, text, parts, open, leansOnOff, onOpen }: SentenceProps) {
   function slot(name: SlotName, opens: string, children: ReactNode): ReactNode {
     return (
       <Slot id={`slot-${name}`} opens={opens} isOpen={open.includes(name)} onOpen={() => onOpen(name)}>
@@ -40,7 +42,13 @@ export function Sentence({ shape, text, parts, open, onOpen }: SentenceProps) {
         'change the word width',
         parts.widths ? <Widths widths={parts.widths} /> : <>w = {text.widths}</>,
       )}
-      , {slot('sets', 'change the instruction sets', <Sets sets={text.sets} />)},{' '}
+      ,{' '}
+      {slot(
+        'sets',
+        'change the instruction sets',
+        <Sets sets={text.sets} off={leansOnOff ? text.off : undefined} />,
+      )}
+      ,{' '}
       <ChargesPart
         charges={parts.charges}
         written={text.charges}
@@ -97,18 +105,26 @@ const SET_PHRASES: Readonly<Record<InstructionSetName, string>> = {
   extended: 'with every class',
 }
 
-function Sets({ sets }: { readonly sets: readonly InstructionSetName[] }) {
+const OFF_PHRASES: Readonly<Record<OffPolicy, string>> = {
+  expand: 'expanded where off',
+  refuse: 'refused where off',
+}
+
+function Sets(props: { readonly sets: readonly InstructionSetName[]; readonly off: OffPolicy | undefined }) {
+  const { sets, off } = props
   if (sets.length === 0) return <>no instruction set</>
   const both = sets.includes('full') && sets.includes('no-multiply')
-  return join(
-    SET_ORDER.filter(set => sets.includes(set)).map(set => (
-      <span className="together" key={set}>
-        <DashKey set={set} />
-        {both && set === 'full' ? 'with' : SET_PHRASES[set]}
-      </span>
-    )),
-    sets.length > 2 ? ', ' : ' and ',
-    ' and ',
+  const phrases = SET_ORDER.filter(set => sets.includes(set)).map(set => (
+    <span className="together" key={set}>
+      <DashKey set={set} />
+      {both && set === 'full' ? 'with' : SET_PHRASES[set]}
+    </span>
+  ))
+  return (
+    <>
+      {join(phrases, sets.length > 2 ? ', ' : ' and ', ' and ')}
+      {off && `, ${OFF_PHRASES[off]}`}
+    </>
   )
 }
 

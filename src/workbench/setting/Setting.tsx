@@ -5,6 +5,7 @@ import { ChargesEditor } from './ChargesEditor'
 import { EditorFrame } from './EditorFrame'
 import { InputEditor } from './InputEditor'
 import { MachineEditor } from './MachineEditor'
+import { leansOnOff } from './OffUses'
 import { ProgressRule } from './ProgressRule'
 import { Sentence, type SlotName } from './Sentence'
 import { SizesEditor } from './SizesEditor'
@@ -21,11 +22,14 @@ interface Editing {
 /** The setting: its sentence, the editor of an open slot, the state of the sweep. */
 export function SettingSection() {
   const workbench = useWorkbench()
-  const { shape, settingText, settingRead } = useWorkbenchState(({ shape, settingText, settingRead }) => ({
-    shape,
-    settingText,
-    settingRead,
-  }))
+  const { shape, settingText, settingRead, program } = useWorkbenchState(
+    ({ shape, settingText, settingRead, checked }) => ({
+      shape,
+      settingText,
+      settingRead,
+      program: checked.program,
+    }),
+  )
   const [editing, setEditing] = useState<Editing>()
   const section = useRef<HTMLElement>(null)
   const [left, setLeft] = useState(0)
@@ -78,6 +82,7 @@ export function SettingSection() {
           text={editing?.text ?? settingText}
           parts={read.parts}
           open={open}
+          leansOnOff={leansOnOff(program, (editing?.text ?? settingText).sets)}
           onOpen={next => setEditing({ slot: next, text: editing?.text ?? settingText })}
         />
         {parts && open[0] === 'widths' && frame('Machine', <MachineEditor {...parts} />)}

@@ -1,67 +1,70 @@
 import type { Draft } from './draft'
 import type { SettingText } from './setting-text'
 
-/** Two routines of the Fennick estuary's gauge network (invented), the second of which needs a multiplier. */
+/** Two routines of the Fennick estuary's gauge network (invented); the first leans on a multiplier. */
 export const DEMO_DRAFT: Draft = {
   file: 'fennick.tally',
   routine: undefined,
   text: `# Fennick estuary, a reading a word: level,
 # minute of day, gauge from the top down.
-# Sorted by digits of k bits, lowest first.
+# Sorted by class of level, then by insertion.
 routine bylevel
   inout a[n]
-  let   k = 8
-  work  b[n], c[2^k]
-  fix   r = 2^k - 1
-  need  w mod (2*k) = 0   # ends in a, not in b
-  claim time  = w/k * (20*n + 10*2^k + 17) + 4
-  claim time  <= 150*n + 2^15
-  claim space <= n + 2^k + 10
+  let   d = 1             # classes a reading
+  work  b[n], c[d*n]
+  fix   m = d*n
+  need  m < 2^w
+  claim time  <= 20*n*w + 2^12
+  claim space <= (d + 1)*n + 12
   check sorted(a)
   check same(a, old(a))
 begin
-  p <- addr(a)
-  q <- addr(b)
-  s <- 0
-  while s < w
-    for d from 0 to r
-      c[d] <- 0
+  for j from 0 to m - 1
+    c[j] <- 0
+  end
+  for i from 0 to n - 1
+    j, x <- a[i] * m      # the class is j
+    c[j] <- c[j] + 1
+  end
+  p <- 0
+  for j from 0 to m - 1
+    x    <- c[j]
+    c[j] <- p
+    p    <- p + x
+  end
+  for i from 0 to n - 1
+    j, x <- a[i] * m
+    p    <- c[j]
+    b[p] <- a[i]
+    c[j] <- p + 1
+  end
+  for i from 0 to n - 1
+    x <- b[i]
+    j <- i
+    while j > 0 and a[j - 1] > x
+      a[j] <- a[j - 1]
+      j    <- j - 1
     end
-    for i from 0 to n - 1
-      d    <- (p[i] >> s) & r
-      c[d] <- c[d] + 1
-    end
-    x <- 0
-    for d from 0 to r
-      y    <- c[d]
-      c[d] <- x
-      x    <- x + y
-    end
-    for i from 0 to n - 1
-      d    <- (p[i] >> s) & r
-      j    <- c[d]
-      q[j] <- p[i]
-      c[d] <- j + 1
-    end
-    t <- p
-    p <- q
-    q <- t
-    s <- s + k
+    a[j] <- x
   end
 end
 
-# The same readings at the datum: times 4/5
-# in fixed point, which wants a multiplier.
-routine todatum
-  inout a[n]
-  fix   m = floor(2^w * 4 / 5)
-  claim time  <= 6*n + 4
-  claim space <= 4
-  check all i in 0..n-1 : a[i] = floor(old(a)[i] * m / 2^w)
+# The sum of a day's readings, in two words.
+routine daysum
+  in    a[n]
+  out   high, low
+  claim time  <= 8*n + 5
+  claim space <= 2
+  check high * 2^w + low = sum(a)
 begin
+  low  <- 0
+  high <- 0
   for i from 0 to n - 1
-    hi, lo <- a[i] * m
-    a[i]   <- hi
+    x   <- a[i]
+    low <- low + x
+    if low < x
+      high <- high + 1
+    end
   end
 end
 `,
@@ -70,6 +73,7 @@ end
 export const DEMO_SETTING: SettingText = {
   widths: '16, 32, 64',
   sets: ['full', 'no-multiply'],
+  off: 'expand',
   charges: 'unit',
   first: '2^6..2^16',
   others: {},

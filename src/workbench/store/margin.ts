@@ -1,4 +1,5 @@
 import { type Count, weighTally } from '../../machine'
+import type { ExpandedUse } from '../../machine/tally'
 import type { Verdict } from '../../sweep/result'
 import type { Reading, SweepRecord } from './record'
 
@@ -14,6 +15,8 @@ export type MarginCell =
       readonly time: Count
       readonly share: number
       readonly bar: number
+      /** Operations a use of what stood in for a class that is off, on average; absent where nothing did. */
+      readonly expanded?: number
     }
   | { readonly line: number; readonly kind: 'total'; readonly time: Count }
   /** Of a claim, check or need over all points so far. */
@@ -31,13 +34,27 @@ export function marginCells(record: SweepRecord, reading: Reading | undefined): 
     const most = Math.max(1, ...byLine.map(each => Number(each.time)))
     for (const { line, time: own } of byLine) {
       const share = time > 0 ? Number(own) / Number(time) : 0
-      cells.set(line, { line, kind: 'time', time: own, share, bar: Number(own) / most })
+      const uses = tally.expanded?.filter(use => use.line === line) ?? []
+      const expanded = meanOf(uses)
+      cells.set(line, {
+        line,
+        kind: 'time',
+        time: own,
+        share,
+        bar: Number(own) / most,
+        ...(expanded !== undefined && { expanded }),
+      })
     }
     const { line } = record.program.routine.tree.span
     cells.set(line, { line, kind: 'total', time })
   }
   for (const [line, word] of verdictWords(record)) cells.set(line, { line, kind: 'verdict', word })
   return [...cells.values()].sort((a, b) => a.line - b.line)
+}
+
+function meanOf(uses: readonly ExpandedUse[]): number | undefined {
+  const all = uses.reduce((sum, { uses: own }) => sum + own, 0)
+  return all > 0 ? uses.reduce((sum, { operations }) => sum + operations, 0) / all : undefined
 }
 
 /** Worse comes later: a line shows the worst of its points. */

@@ -1,4 +1,4 @@
-import { type Charges, INSTRUCTION_SETS, type InstructionSetName } from '../../machine/machine'
+import { type Charges, INSTRUCTION_SETS, type InstructionSetName, type OffPolicy } from '../../machine/machine'
 import type { Program } from '../../routine/block'
 import { parseCharges } from '../../sweep/charges'
 import { parseLets } from '../../sweep/lets'
@@ -18,6 +18,8 @@ export interface SettingText {
   /** `16, 32, 64`, `lg(n)^2`. */
   readonly widths: string
   readonly sets: readonly InstructionSetName[]
+  /** What becomes of a class that is off and used. */
+  readonly off: OffPolicy
   /** `unit`, `operators`, `unit, multiply=32`. */
   readonly charges: string
   /** Values of the routine's first size, whatever it is called. */
@@ -119,8 +121,8 @@ export function readSetting(text: SettingText, shape: RoutineShape): SettingRead
   const parts: SettingParts = { ...(widths && { widths }), ...(charges && { charges }), sizes, lets }
   if (problems.length > 0 || !widths || !charges || trials === undefined || seed === undefined)
     return { parts, problems }
-  const { sets, pattern } = text
-  const setting: Setting = { sizes, widths, lets, sets, off: 'refuse', charges, pattern, trials, seed }
+  const { sets, off, pattern } = text
+  const setting: Setting = { sizes, widths, lets, sets, off, charges, pattern, trials, seed }
   return { setting, parts, problems }
 
   function whole(field: 'trials' | 'seed', written: string, least: number, most: number): number | undefined {
@@ -161,11 +163,15 @@ const SET_NAMES = Object.keys(INSTRUCTION_SETS) as InstructionSetName[]
 /** Whether a value is a setting's text, whatever its parts say. For values that come from outside. */
 export function isSettingText(value: unknown): value is SettingText {
   if (typeof value !== 'object' || value === null) return false
-  const { widths, sets, charges, first, others, lets, pattern, trials, seed } = value as Record<string, unknown>
+  const { widths, sets, off, charges, first, others, lets, pattern, trials, seed } = value as Record<
+    string,
+    unknown
+  >
   return (
     [widths, charges, first, trials, seed].every(part => typeof part === 'string') &&
     Array.isArray(sets) &&
     sets.every(set => SET_NAMES.includes(set)) &&
+    (off === 'refuse' || off === 'expand') &&
     FEED_PATTERNS.includes(pattern as FeedPattern) &&
     isTexts(others) &&
     isTexts(lets)
