@@ -2,10 +2,10 @@ import fc from 'fast-check'
 import type { Given } from '../outside/two-ways'
 import { type Arrays, drawWord, randomArrays, type Scope, statements } from './random-text'
 
-/** A whole random routine and all that one run of it needs. Valid by construction; it may fail when run. */
+/** A whole random routine and what several runs of it are given, all at one width. Valid by construction; runs may fail. */
 export interface RandomRoutine {
   readonly text: string
-  readonly given: Given & { readonly width: number }
+  readonly givens: readonly Given[]
 }
 
 /** Small and odd widths often: that is where masks, limits and addresses bite. */
@@ -39,7 +39,6 @@ const procedure: fc.Arbitrary<ProcedureShape> = fc.record({
 
 const shape = fc.record({
   width,
-  limits,
   n: fc.nat(6),
   arrays: randomArrays,
   inputs: fc.nat(2),
@@ -49,7 +48,10 @@ const shape = fc.record({
   tunable: fc.nat(5),
   procedures: fc.array(procedure, { maxLength: 2 }),
   body: statements,
-  junk: fc.nat(1000),
+  runs: fc.array(fc.record({ limits, junk: fc.nat(1000), more: fc.nat(2), tunable: fc.nat(5) }), {
+    minLength: 1,
+    maxLength: 2,
+  }),
 })
 
 type Drawn = typeof shape extends fc.Arbitrary<infer T> ? T : never
@@ -139,18 +141,26 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
   ].join('\n')
 
   const filled = arrays.filter(({ role }) => role === 'in' || role === 'inout')
-  const given = {
-    width: drawn.width,
-    sizes: arrays.some(array => array.sized) ? { n } : {},
-    scalars: Object.fromEntries([...inputs, ...kept].map((name, at) => [name, word(at + 20)])),
-    arrays: Object.fromEntries(
-      filled.map(({ name, length }, which) => [name, Array.from({ length }, (_, at) => word(at * 3 + which * 5))]),
-    ),
-    junk: drawn.junk,
-    limits: drawn.limits,
-  }
+  // The first run is at the n that the text was made for, the next at one that is larger, with other words.
+  const givens = drawn.runs.map(({ limits, junk, more, tunable }, run) => {
+    const longer = run * more
+    return {
+      width: drawn.width,
+      sizes: arrays.some(({ sized }) => sized) ? { n: n + longer } : {},
+      lets: run > 0 ? { m: BigInt(small(tunable)) } : {},
+      scalars: Object.fromEntries([...inputs, ...kept].map((name, at) => [name, word(at + 20 + run)])),
+      arrays: Object.fromEntries(
+        filled.map(({ name, length, sized }, which) => [
+          name,
+          Array.from({ length: sized ? length + longer : length }, (_, at) => word(at * 3 + which * 5 + run)),
+        ]),
+      ),
+      junk,
+      limits,
+    }
+  })
   // A shrunk counterexample is to be read, and pasted into a test.
-  const routine = { text, given, [fc.toStringMethod]: () => `\n${text}\nrun with ${fc.stringify(given)}\n` }
+  const routine = { text, givens, [fc.toStringMethod]: () => `\n${text}\nrun with ${fc.stringify(givens)}\n` }
   return routine
 }
 
