@@ -1,3 +1,4 @@
+import type { TokenType } from './chevrotain'
 import { type Line, type Mark, readLines } from './lines'
 import { isDeclaration, labelTokens } from './roles'
 import * as T from './tokens'
@@ -36,11 +37,14 @@ export function tokenizeText(text: string): Token[] {
   for (const line of lines) {
     const labels = labelTokens(line)
     const declares = isDeclaration(line.tokens)
+    // Whether an operand stands before, so that an operator or a word that links two may follow.
+    let after = false
     for (let at = 0; at < line.tokens.length; at++) {
       const mark = line.tokens[at]!
       const start = mark.startOffset
       for (; (asides[aside]?.start ?? start) < start; aside++) tokens.push(asides[aside]!)
-      const kind = kindOf(line, at, labels, declares)
+      const kind = kindOf(line, at, labels, declares, after)
+      after = kind === 'name' || kind === 'number' || CLOSING.has(mark.tokenType)
       if (kind) tokens.push({ start, end: start + mark.image.length, kind })
     }
   }
@@ -104,54 +108,49 @@ const WORDS: ReadonlySet<unknown> = new Set([
   T.Procedure,
   T.Assert,
 ])
-/** Words that stand between two operands in their place, and are names where an operand stands. */
-const LINKING: ReadonlySet<unknown> = new Set([T.From, T.To, T.Downto, T.By, T.Then, T.Do, T.In])
+const CLOSING: ReadonlySet<unknown> = new Set([T.RightParen, T.RightSquare, T.RightCeil, T.RightFloor])
 
-/** What a token is in its place; undefined for brackets and commas. */
-function kindOf(line: Line, at: number, labels: number, declares: boolean): TokenKind | undefined {
+/** What a token is in its place; undefined for brackets and commas. `after`: an operand stands before it. */
+function kindOf(line: Line, at: number, labels: number, declares: boolean, after: boolean): TokenKind | undefined {
   const { tokens } = line
-  const mark = tokens[at]!
-  const type = mark.tokenType
+  const type = tokens[at]!.tokenType
   if (at < labels) return at % 2 === 0 ? 'label' : undefined
   if (at === 0 && declares) return 'declaration'
-  if (T.isOf(type, T.Name)) return nameKind(tokens, at, labels, declares)
+  if (T.isOf(type, T.Name)) {
+    if (after && links(type, tokens[labels]!.tokenType)) return 'keyword'
+    return nameKind(tokens, at, declares)
+  }
   if (WORDS.has(type)) return 'keyword'
   if (KINDS.has(type)) return KINDS.get(type)
   return T.isOf(type, T.Infix) || T.isOf(type, T.Assign) ? 'operator' : undefined
 }
 
-function nameKind(tokens: readonly Mark[], at: number, labels: number, declares: boolean): TokenKind {
-  const type = tokens[at]!.tokenType
-  const before = tokens[at - 1]
-  const next = tokens[at + 1]
-  const head = tokens[labels]?.tokenType
-  if (before?.tokenType === T.Goto) return 'label'
-  if (LINKING.has(type) && before && endsOperand(before) && (declares || head !== tokens[at]!.tokenType)) {
-    const place =
-      type === T.In
-        ? declares || head === T.Assert || follows(tokens, at)
-        : type === T.Then
-          ? head === T.If || head === T.Else
-          : type === T.Do
-            ? head === T.While || head === T.For
-            : head === T.For
-    if (place) return 'keyword'
+/** Whether a word that can be a name links two operands on a line that begins with `head`. */
+function links(type: TokenType, head: TokenType): boolean {
+  switch (type) {
+    case T.In:
+      return true
+    case T.From:
+    case T.To:
+    case T.Downto:
+    case T.By:
+      return head === T.For
+    case T.Then:
+      return head === T.If || head === T.Else
+    case T.Do:
+      return head === T.While || head === T.For
+    case T.Distinct:
+      return head === T.Feed
+    default:
+      return false
   }
-  if (T.isOf(type, T.Quantifier) && next && tokens[at + 2]?.tokenType === T.In && T.isOf(next.tokenType, T.Name))
-    return 'function'
-  if (declares && at === labels + 1 && tokens[0]!.tokenType === T.Claim) return 'keyword'
-  if (declares && type === T.Distinct && at === tokens.length - 1 && tokens[0]!.tokenType === T.Feed)
-    return 'keyword'
-  return next?.tokenType === T.LeftParen ? 'function' : 'name'
 }
 
-/** Whether the `in` at `at` belongs to a quantifier: `sum i in`. */
-function follows(tokens: readonly Mark[], at: number): boolean {
-  const word = tokens[at - 2]
-  return word !== undefined && T.isOf(word.tokenType, T.Quantifier)
-}
-
-function endsOperand(mark: Mark): boolean {
-  const type = mark.tokenType
-  return T.isOf(type, T.Name) || type === T.Numeral || type === T.RightParen || type === T.RightSquare
+function nameKind(tokens: readonly Mark[], at: number, declares: boolean): TokenKind {
+  const next = tokens[at + 1]?.tokenType
+  if (tokens[at - 1]?.tokenType === T.Goto) return 'label'
+  if (declares && at === 1 && tokens[0]!.tokenType === T.Claim) return 'keyword'
+  if (next === T.LeftParen) return 'function'
+  const quantifies = T.isOf(tokens[at]!.tokenType, T.Quantifier) && tokens[at + 2]?.tokenType === T.In
+  return quantifies && next && T.isOf(next, T.Name) ? 'function' : 'name'
 }

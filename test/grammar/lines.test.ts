@@ -103,8 +103,13 @@ describe('numbers', () => {
     ['1_000_000', 1000000n],
     ['0x1_0000', 65536n],
     ['007', 7n],
-    [String(2n ** 4096n - 1n), 2n ** 4096n - 1n],
   ])('%s', (text, value) => expect(valueOf(text)).toBe(value))
+
+  test('of the widest word are read whole', () => {
+    const word = 2n ** 4096n - 1n
+    expect(valueOf(String(word))).toBe(word)
+    expect(valueOf(`0b${word.toString(2)}`)).toBe(word)
+  })
 
   test('stand next to a range sign', () => {
     expect(linesOf('feed x in 2..5')).toEqual(['feed x in 2 .. 5'])
