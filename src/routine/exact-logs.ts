@@ -22,6 +22,8 @@ export type Root = RealForm & { kind: 'root' }
 const MOST_CANCEL_BITS = 1 << 16
 /** Bits of an argument that further ones are multiplied into. */
 const MOST_ARGUMENT_BITS = 1 << 22
+/** Bits of numbers whose logarithms are tried for a rational quotient: as many steps as there are bits, at most. */
+const MOST_QUOTIENT_BITS = 1 << 10
 /** Roots of a higher degree are worked out through logarithms. */
 export const MOST_ROOT_DEGREE = 16
 /** Bits of a radicand that factors are taken into. */
@@ -54,6 +56,36 @@ export function scaleLogs(logs: Logs, by: Rational): ExactValue {
     constant: multiplyRationals(logs.constant, by),
     terms: logs.terms.map(term => ({ ...term, factor: multiplyRationals(term.factor, by) })),
   })
+}
+
+/** x / y where both are one logarithm times a rational number, and their quotient is rational: lg(8)/lg(4) = 3/2. */
+export function divideLogs(x: Real, y: Real): Rational | undefined {
+  const [left, right] = [singleLog(x), singleLog(y)]
+  if (!left || !right) return undefined
+  const quotient = quotientOfLogs(left.argument, right.argument)
+  return quotient && multiplyRationals(divideRationals(left.factor, right.factor), quotient)
+}
+
+function singleLog({ form }: Real): { factor: Rational; argument: bigint } | undefined {
+  if (form?.kind !== 'logs' || form.constant !== 0n || form.terms.length > 1) return undefined
+  const { factor, argument } = form.terms[0]!
+  if (typeof argument !== 'bigint') return undefined
+  return bitLength(argument) > MOST_QUOTIENT_BITS ? undefined : { factor, argument }
+}
+
+/**
+ * lg(x) / lg(y) for whole numbers above 1, where it is rational: Euclid's algorithm on the exponents. Powers of one
+ * number divide each other all the way down to it, and others do not.
+ */
+function quotientOfLogs(x: bigint, y: bigint): Rational | undefined {
+  if (x === y) return 1n
+  if (x < y) {
+    const inverse = quotientOfLogs(y, x)
+    return inverse && divideRationals(1n, inverse)
+  }
+  if (x % y !== 0n) return undefined
+  const rest = quotientOfLogs(x / y, y)
+  return rest && addRationals(1n, rest)
 }
 
 /** Gathers terms of one factor into one logarithm of a product, then sees whether what is left is rational. */

@@ -1,5 +1,6 @@
 import {
   addLogs,
+  divideLogs,
   invertRoot,
   least,
   logarithm,
@@ -138,6 +139,8 @@ export function divide(x: ExactValue, y: ExactValue): Answer {
   if (sign === undefined) return exactProblem('undecided', `${UNDECIDED} whether the divisor is zero.`)
   const inverse = invertRoot(y)
   if (inverse !== undefined) return multiply(x, inverse)
+  const quotient = isReal(x) ? divideLogs(x, y) : undefined
+  if (quotient !== undefined) return quotient
   return new Real(bits => {
     const top = encloseValue(x, bits)
     const bottom = top && y.enclose(bits)
@@ -243,18 +246,18 @@ function powerOfReal(base: Real, exponent: bigint): Answer {
 }
 
 function raiseTwoTo(exponent: ExactValue): Answer {
-  if (!isReal(exponent)) return power(2n, exponent)
-  const logs = logsOf(exponent)
+  if (typeof exponent === 'bigint') return wholePower(2n, exponent)
+  const logs = isReal(exponent) ? logsOf(exponent) : undefined
   const exact = logs && raiseTwo(logs)
   if (exact !== undefined) return exact
-  const rough = exponent.enclose(64)
+  const rough = encloseValue(exponent, 64)
   if (!rough || rough.high >> 64n > BigInt(MOST_BITS) || -rough.low >> 64n > BigInt(MOST_BITS))
     return exactProblem('too-large', `It is a power of more than ${MOST_BITS} bits, past what is worked out.`)
   const extra = Math.max(0, Number(rough.high >> 64n)) + 2
   return new Real(bits => {
-    const own = exponent.enclose(bits + extra)
+    const own = encloseValue(exponent, bits + extra)
     return own && enclosePowerOfTwo(own.low, own.high, bits + extra, bits)
-  }, exponent.parts)
+  }, partsOf(exponent))
 }
 
 /** lg(x), to base 2. */

@@ -59,68 +59,71 @@ export function areSorted(words: Words): boolean {
 export function areSame(left: Words, right: Words): boolean {
   if (left.length !== right.length) return false
   if (left instanceof Uint32Array && right instanceof Uint32Array)
-    return equalHalves(sortedHalves(left, 1), sortedHalves(right, 1))
+    return areEqual(sortHalves(left, 1), sortHalves(right, 1))
   if (left instanceof BigUint64Array && right instanceof BigUint64Array)
-    return equalHalves(sortedHalves(halvesOf(left), 2), sortedHalves(halvesOf(right), 2))
-  const [first, second] = [sortedBigints(left), sortedBigints(right)]
-  return first.every((word, at) => word === second[at])
+    return areEqual(sortHalves(halvesOf(left), 2), sortHalves(halvesOf(right), 2))
+  return areEqual(sortBigints(left), sortBigints(right))
 }
 
-function sortedBigints(words: Words): bigint[] {
-  const copy = Array.from(words as Iterable<bigint | number>, BigInt)
-  return areSorted(copy) ? copy : copy.sort((a, b) => (a < b ? -1 : a > b ? 1 : 0))
-}
-
-function equalHalves(left: Uint32Array, right: Uint32Array): boolean {
+function areEqual<T>(left: ArrayLike<T>, right: ArrayLike<T>): boolean {
   for (let at = 0; at < left.length; at++) if (left[at] !== right[at]) return false
   return true
 }
 
+function sortBigints(words: Words): bigint[] {
+  return Array.from(words as Iterable<bigint | number>, BigInt).sort((a, b) => (a < b ? -1 : a > b ? 1 : 0))
+}
+
 const DIGIT_BITS = 11
 const DIGITS = 1 << DIGIT_BITS
-const DIGITS_A_HALF = Math.ceil(32 / DIGIT_BITS)
 
 /**
- * Words of one half or two in some order that depends on their values alone: sorted from the least digit up, all digits
- * counted in one pass and those that never vary left out.
+ * Words of one half or two, in an order that depends on their values alone: digit by digit, stable, those digits left
+ * out that never vary.
  */
-function sortedHalves(words: Uint32Array, halves: 1 | 2): Uint32Array {
-  const passes = halves * DIGITS_A_HALF
-  const counts = new Uint32Array(passes * DIGITS)
-  for (let at = 0; at < words.length; at += halves) {
-    for (let half = 0; half < halves; half++) {
-      const value = words[at + half]!
-      for (let digit = 0; digit < DIGITS_A_HALF; digit++)
-        counts[(half * DIGITS_A_HALF + digit) * DIGITS + digitOf(value, digit)]!++
+function sortHalves(words: Uint32Array, step: 1 | 2): Uint32Array {
+  const places = new Uint32Array(DIGITS)
+  let from = words
+  let spare = new Uint32Array(words.length)
+  for (let half = 0; half < step; half++) {
+    for (let shift = 0; shift < 32; shift += DIGIT_BITS) {
+      if (!placeDigits(from, step, half, shift, places)) continue
+      const into = spare
+      if (step === 1) moveHalves(from, into, shift, places)
+      else movePairs(from, into, half, shift, places)
+      spare = from === words ? new Uint32Array(words.length) : (from as Uint32Array<ArrayBuffer>)
+      from = into
     }
-  }
-  let from: Uint32Array = words
-  let into: Uint32Array = new Uint32Array(words.length)
-  for (let pass = 0; pass < passes; pass++) {
-    const half = Math.floor(pass / DIGITS_A_HALF)
-    const digit = pass % DIGITS_A_HALF
-    const places = counts.subarray(pass * DIGITS, (pass + 1) * DIGITS)
-    if (words.length > 0 && places[digitOf(words[half]!, digit)] === words.length / halves) continue
-    let place = 0
-    for (let value = 0; value < DIGITS; value++) {
-      const count = places[value]!
-      places[value] = place
-      place += count * halves
-    }
-    for (let at = 0; at < from.length; at += halves) {
-      const value = digitOf(from[at + half]!, digit)
-      const to = places[value]!
-      places[value] = to + halves
-      into[to] = from[at]!
-      if (halves === 2) into[to + 1] = from[at + 1]!
-    }
-    const spare = from === words ? new Uint32Array(words.length) : from
-    from = into
-    into = spare
   }
   return from
 }
 
-function digitOf(value: number, digit: number): number {
-  return (value >>> (digit * DIGIT_BITS)) & (DIGITS - 1)
+/** Where the words of each digit begin in order; false where all words have the same one. */
+function placeDigits(words: Uint32Array, step: number, half: number, shift: number, places: Uint32Array): boolean {
+  places.fill(0)
+  for (let at = half; at < words.length; at += step) places[(words[at]! >>> shift) & (DIGITS - 1)]!++
+  const count = words.length / step
+  if (count === 0 || places[(words[half]! >>> shift) & (DIGITS - 1)] === count) return false
+  let place = 0
+  for (let digit = 0; digit < DIGITS; digit++) {
+    const next = place + places[digit]!
+    places[digit] = place
+    place = next
+  }
+  return true
+}
+
+function moveHalves(from: Uint32Array, into: Uint32Array, shift: number, places: Uint32Array): void {
+  for (let at = 0; at < from.length; at++) {
+    const word = from[at]!
+    into[places[(word >>> shift) & (DIGITS - 1)]!++] = word
+  }
+}
+
+function movePairs(from: Uint32Array, into: Uint32Array, half: number, shift: number, places: Uint32Array): void {
+  for (let at = 0; at < from.length; at += 2) {
+    const to = 2 * places[(from[at + half]! >>> shift) & (DIGITS - 1)]!++
+    into[to] = from[at]!
+    into[to + 1] = from[at + 1]!
+  }
 }

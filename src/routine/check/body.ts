@@ -13,6 +13,8 @@ import type { VariableScope } from './scope'
 export class BodyCheck {
   /** Variables of the `for` loops around, innermost last. */
   private readonly loops: Name[] = []
+  /** Set while comparisons and ends of loops are checked: a name that nothing stands for may be a size there. */
+  private bounding = false
   readonly called = new Set<string>()
 
   constructor(
@@ -31,17 +33,17 @@ export class BodyCheck {
   private statement(statement: Statement): void {
     switch (statement.kind) {
       case 'assign':
-        this.target(statement.target)
         this.word(statement.value)
+        this.target(statement.target)
         return
       case 'product':
-        this.targets([statement.high, statement.low])
         this.word(statement.left)
         this.word(statement.right)
+        this.targets([statement.high, statement.low])
         return
       case 'call':
-        this.targets(statement.results)
         for (const argument of statement.arguments) this.word(argument)
+        this.targets(statement.results)
         this.called.add(statement.procedure.text)
         checkCall(statement, this.declared, this.report)
         return
@@ -83,14 +85,18 @@ export class BodyCheck {
   }
 
   private condition(condition: WordCondition): void {
-    if (condition.kind === 'compare') {
-      this.word(condition.left)
-      this.word(condition.right)
-    } else if (condition.kind === 'not') this.condition(condition.operand)
+    if (condition.kind === 'compare') this.bounds([condition.left, condition.right])
+    else if (condition.kind === 'not') this.condition(condition.operand)
     else {
       this.condition(condition.left)
       this.condition(condition.right)
     }
+  }
+
+  private bounds(words: readonly WordExpression[]): void {
+    this.bounding = true
+    for (const word of words) this.word(word)
+    this.bounding = false
   }
 
   private word(expression: WordExpression): void {
@@ -135,7 +141,7 @@ export class BodyCheck {
     const { text, span } = name
     const meaning = this.meaningOf(text)
     if (meaning === 'variable') this.scope.read.add(text)
-    else if (!meaning) this.missing.word(name, this.scope, true)
+    else if (!meaning) this.missing.word(name, this.scope, this.bounding ? 'bound' : 'code')
     else if (meaning.kind === 'array')
       this.report.error({
         span,
@@ -322,8 +328,7 @@ export class BodyCheck {
   private forLoop(statement: Extract<Statement, { kind: 'for' }>): void {
     const { variable, from, to, step, body } = statement
     this.setVariable(variable)
-    this.word(from)
-    this.word(to)
+    this.bounds([from, to])
     if (step) this.word(step)
     if (step?.kind === 'number' && step.value === 0n)
       this.report.error({

@@ -18,6 +18,9 @@ import { eachStatement, partsOfWord, targetsOf, wordsOf } from './walk'
 type Declarations = Omit<Routine, 'name' | 'tree' | 'text'>
 type Listed = 'in' | 'out' | 'inout' | 'work'
 
+/** Read-only arrays first, so that one compare tells an address that may be stored to. */
+const MEMORY_ORDER = ['in', 'table', 'inout', 'out', 'work'] as const
+
 /**
  * Gathers what a routine declares. Names come first, all of them, so that a line may use what a later one declares; then
  * the sizes, which are the free names in lengths of inputs and results; then what the expressions use.
@@ -53,14 +56,18 @@ export class DeclarationCheck {
     const lets = new Set<string>()
     const fixes = new Set(this.lets.map(({ name }) => name))
     const at = (what: string): ExactPlace => ({ kind: 'point', what })
+    const lengthOf = ({ text }: Name): ExactPlace => ({
+      kind: 'point',
+      what: `the length of \`${text}\``,
+      cause: 'length',
+    })
     for (const declaration of this.tree.declarations) {
       switch (declaration.kind) {
         case 'in':
         case 'out':
         case 'inout':
         case 'work':
-          for (const { name, length } of declaration.items)
-            if (length) exact.expression(length, at(`the length of \`${name.text}\``))
+          for (const { name, length } of declaration.items) if (length) exact.expression(length, lengthOf(name))
           break
         case 'let':
         case 'fix': {
@@ -71,7 +78,7 @@ export class DeclarationCheck {
           break
         }
         case 'table':
-          exact.expression(declaration.length, at(`the length of \`${declaration.name.text}\``))
+          exact.expression(declaration.length, lengthOf(declaration.name))
           for (const value of declaration.values) exact.expression(value, at('a table'))
           this.checkTableLength(declaration)
           break
@@ -104,14 +111,10 @@ export class DeclarationCheck {
   private declarations(): Declarations {
     const of = <K extends Declaration['kind']>(kind: K) =>
       this.tree.declarations.filter((each): each is Extract<Declaration, { kind: K }> => each.kind === kind)
-    const order = ['in', 'table', 'inout', 'out', 'work']
-    // Read-only arrays first, so that one compare tells an address that may be stored to.
-    const place = ({ role }: ArrayDeclaration) => Math.min(order.indexOf(role), order.indexOf('inout'))
-    const arrays = this.arrays.map((array, at) => ({ array, at }))
-    arrays.sort((a, b) => place(a.array) - place(b.array) || a.at - b.at)
+    const arrays = MEMORY_ORDER.flatMap(role => this.arrays.filter(array => array.role === role))
     return {
       sizes: this.sizes,
-      arrays: arrays.map(({ array }) => array),
+      arrays,
       scalars: this.scalars,
       lets: this.lets,
       fixes: this.fixes,

@@ -8,7 +8,7 @@ import type { VariableScope } from './scope'
 
 /** Where an exact expression stands, which decides what it may read. */
 export type ExactPlace =
-  | { readonly kind: 'point'; readonly what: string }
+  | { readonly kind: 'point'; readonly what: string; readonly cause?: string }
   /** `known` holds the names of lets (and fixes) declared above. */
   | { readonly kind: 'let' | 'fix'; readonly name: string; readonly known: ReadonlySet<string> }
   | { readonly kind: 'check' }
@@ -173,7 +173,7 @@ export class ExactCheck {
     const { text, span } = name
     if (place.kind === 'assert') {
       // The scope of the routine's own body would have had it.
-      this.missing.word(name, place.scope, true)
+      this.missing.word(name, place.scope, 'bound')
       return
     }
     this.report.error({ span, ...dataRemark(`\`${text}\``, describeMeaning(meaning), place) })
@@ -182,11 +182,11 @@ export class ExactCheck {
   private unknown(name: Name, place: ExactPlace): void {
     const { text, span } = name
     if (place.kind === 'assert') {
-      this.missing.word(name, place.scope, true)
+      this.missing.word(name, place.scope, 'bound')
       return
     }
     if (!this.variables.has(text)) {
-      this.missing.word(name, undefined, false)
+      this.missing.word(name, undefined, 'exact')
       return
     }
     if (place.kind === 'check')
@@ -217,7 +217,7 @@ export class ExactCheck {
       return
     }
     if (meaning?.kind === 'scalar' && meaning.role !== 'out') return
-    if (!meaning && !this.variables.has(text)) this.missing.word(name, undefined, false)
+    if (!meaning && !this.variables.has(text)) this.missing.word(name, undefined, 'exact')
     else this.report.error({ span, ...noOld(text) })
   }
 
@@ -264,7 +264,7 @@ function dataRemark(what: string, kind: string, place: ExactPlace) {
   return {
     message: `${what} is ${kind === 'data' ? 'data' : `${kind}, that is, data`}; ${placeName(place)} is worked out before there is any.`,
     remedy: `Use numbers, \`w\`, sizes, ${also}; what holds of data is a \`check\` or an \`assert\`.`,
-    cause: `data ${what} ${placeName(place)}`,
+    cause: `data ${what} ${(place.kind === 'point' && place.cause) || placeName(place)}`,
   }
 }
 

@@ -22,6 +22,8 @@ interface MissingWord {
   readonly scope: VariableScope | undefined
   /** Whether word code reads it; otherwise declarations alone do. */
   readonly inCode: boolean
+  /** Whether it bounds something: in a comparison, an end of a loop, or an exact expression. */
+  bounds: boolean
 }
 
 /**
@@ -47,45 +49,47 @@ export class Missing {
     this.arrays.set(text, known)
   }
 
-  word({ text, span }: Name, scope: VariableScope | undefined, inCode: boolean): void {
+  word({ text, span }: Name, scope: VariableScope | undefined, where: 'code' | 'bound' | 'exact'): void {
     if (this.report.mayBeLost(text)) return
     const key = `${scope?.procedure?.name.text ?? ''} ${text}`
-    const known = this.words.get(key) ?? { name: text, places: [], scope, inCode }
+    const known = this.words.get(key) ?? { name: text, places: [], scope, inCode: where !== 'exact', bounds: false }
     known.places.push(span)
+    known.bounds ||= where !== 'code'
     this.words.set(key, known)
   }
 
   /** Reports what was gathered. */
   tell(): void {
-    const size = this.lengthName()
-    let sized = false
+    const sizes = this.declared.names(meaning => meaning.kind === 'size')
+    const size = sizes[0] ?? this.lengthName()
+    const roles = new Map([...this.arrays].map(([name, { uses }]) => [name, roleOf(uses)]))
+    // Working memory names no size, so one of the arrays has to.
+    const isSized = sizes.length > 0 || [...roles.values()].some(role => role !== 'work')
+    let declares = false
     for (const [name, missing] of this.arrays) {
-      const role = roleOf(missing.uses)
-      if (this.tellArray(name, missing, size, role) && role !== 'work') sized = true
+      const role = roles.get(name)!
+      if (this.tellArray(name, missing, size, role === 'work' && !isSized ? 'out' : role)) declares = true
     }
     for (const missing of this.words.values()) {
       if (this.arrays.has(missing.name)) continue
-      if (sized && missing.name === size) continue
+      if (declares && missing.name === size) continue
       this.tellWord(missing)
     }
   }
 
   /** The name that the length of a missing array most likely has. */
   private lengthName(): string {
-    const sizes = this.declared.names(meaning => meaning.kind === 'size')
     const unknown = [...this.words.values()]
-      .filter(({ name, scope }) => !this.arrays.has(name) && !this.nearTo(name, scope))
+      .filter(({ name, scope, bounds }) => bounds && !this.arrays.has(name) && !this.nearTo(name, scope))
       .map(({ name }) => name)
-    if (unknown.includes('n')) return 'n'
-    return unknown[0] ?? sizes[0] ?? 'n'
+    return unknown.includes('n') ? 'n' : (unknown[0] ?? 'n')
   }
 
   /** Reports an array; true where the remedy is a declaration of its own. */
   private tellArray(name: string, { places, uses, scope }: MissingArray, size: string, role: string): boolean {
     const arrays = this.declared.names(meaning => meaning.kind === 'array')
     const near = nearestName(name, [...arrays, ...(scope?.names() ?? [])])
-    const sizes = this.declared.names(meaning => meaning.kind === 'size')
-    const line = `${role} ${name}[${role === 'work' && !sizes.includes(size) ? (sizes[0] ?? size) : size}]`
+    const line = `${role} ${name}[${size}]`
     const stored = uses.includes('store')
     if (near) {
       this.report.error({
