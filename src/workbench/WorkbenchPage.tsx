@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import { DraftSection } from './draft/DraftSection'
 import { FaultBoundary } from './FaultBoundary'
+import { FiguresSection } from './figures'
 import { GridSection } from './grid/GridSection'
 import { DropZone } from './head/DropZone'
 import { Head } from './head/Head'
@@ -9,14 +10,14 @@ import { type Layout, useLayout } from './layout'
 import { SettingSection } from './setting/Setting'
 import { useWorkbench } from './use'
 
-type Part = 'draft' | 'lead'
+type Part = 'draft' | 'lead' | 'figures'
 
 /** The order in which the parts are read, which is the order of the document too: focus follows the eye. */
 const ORDER: Readonly<Record<Layout, readonly Part[]>> = {
-  wide: ['draft', 'lead'],
-  two: ['draft', 'lead'],
-  one: ['lead', 'draft'],
-  narrow: ['lead', 'draft'],
+  wide: ['draft', 'lead', 'figures'],
+  two: ['draft', 'lead', 'figures'],
+  one: ['lead', 'draft', 'figures'],
+  narrow: ['lead', 'draft', 'figures'],
 }
 
 /** The whole page. */
@@ -37,6 +38,11 @@ export function WorkbenchPage() {
         </FaultBoundary>
       </div>
     ),
+    figures: (
+      <FaultBoundary key="figures" workbench={workbench}>
+        <FiguresSection />
+      </FaultBoundary>
+    ),
   }
   return (
     <>
@@ -51,6 +57,7 @@ export function WorkbenchPage() {
       <nav className="jump" aria-label="Parts of the page">
         <a href="#grid">Grid</a>
         <a href="#draft">Draft</a>
+        <a href="#figures">Figures</a>
       </nav>
       <main className="paper">{ORDER[layout].map(part => parts[part])}</main>
       <DropZone />

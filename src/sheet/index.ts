@@ -1,0 +1,2 @@
+export { type FigureRow, writeFigureCsv } from './figure-csv'
+export { stateModel, UNIT_COST_NOTE } from './model-statement'

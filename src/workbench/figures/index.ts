@@ -1,0 +1,1 @@
+export { FiguresSection } from './Figures'
