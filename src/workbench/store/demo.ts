@@ -79,6 +79,6 @@ export const DEMO_SETTING: SettingText = {
   others: {},
   lets: {},
   pattern: 'uniform',
-  trials: '5',
+  trials: '3',
   seed: '1',
 }

@@ -28,18 +28,26 @@ interface Board {
   dismiss(key: string): void
 }
 
-/** Milliseconds of rest after which a draft is checked. */
+/** Milliseconds of rest after which a draft is checked, at least. */
 export const REST = 120
+/**
+ * The same as a multiple of what the last check took. A check runs on the page's own thread: a few milliseconds for the
+ * drafts that people write, a tenth of a second for thousands of lines, which then wait for a longer pause.
+ */
+const PAUSE = 4
 
 export function draftingOf(store: StoreApi<WorkbenchState>, world: World, board: Board): Drafting {
   let due: ReturnType<typeof setTimeout> | undefined
+  let took = 0
 
   function checkNow(): void {
     clearTimeout(due)
     due = undefined
     const { draft, checked: before, shape: shapeBefore, settingText } = store.getState()
     if (isCheckOf(before, draft)) return
+    const begun = world.now()
     const checked = world.check(draft)
+    took = world.now() - begun
     const shape = shapeAfter(checked.program, shapeBefore)
     store.setState({ checked, shape, settingRead: readSetting(settingText, shape) })
   }
@@ -69,7 +77,7 @@ export function draftingOf(store: StoreApi<WorkbenchState>, world: World, board:
       if (draft.text === text) return
       store.setState({ draft: { ...draft, text } })
       clearTimeout(due)
-      due = setTimeout(checkNow, REST)
+      due = setTimeout(checkNow, Math.max(REST, PAUSE * took))
     },
     checkNow,
     rename: typed => store.setState(({ draft }) => ({ draft: { ...draft, file: fileName(typed) } })),

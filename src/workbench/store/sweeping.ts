@@ -110,7 +110,8 @@ export function sweepingOf(store: StoreApi<WorkbenchState>, world: World): Sweep
         result => result && weighResult(record.program, record.setting, result, charges),
       )
       store.setState({ record: { ...record, results, setting: { ...record.setting, charges } } })
-      readOn(record.status !== 'running')
+      // The point that is read stays: what changed is its price.
+      if (!store.getState().reading) readOn(record.status !== 'running')
     },
   }
 }
