@@ -8,16 +8,17 @@ import { Head } from './head/Head'
 import { Notices } from './head/Notices'
 import { type Layout, useLayout } from './layout'
 import { SettingSection } from './setting/Setting'
+import { ClaimsSection, PointsSection, TallySection } from './tables'
 import { useWorkbench } from './use'
 
-type Part = 'draft' | 'lead' | 'figures'
+type Part = 'draft' | 'lead' | 'figures' | 'tally' | 'points'
 
 /** The order in which the parts are read, which is the order of the document too: focus follows the eye. */
 const ORDER: Readonly<Record<Layout, readonly Part[]>> = {
-  wide: ['draft', 'lead', 'figures'],
-  two: ['draft', 'lead', 'figures'],
-  one: ['lead', 'draft', 'figures'],
-  narrow: ['lead', 'draft', 'figures'],
+  wide: ['draft', 'lead', 'figures', 'tally', 'points'],
+  two: ['draft', 'lead', 'figures', 'tally', 'points'],
+  one: ['lead', 'draft', 'figures', 'tally', 'points'],
+  narrow: ['lead', 'draft', 'figures', 'tally', 'points'],
 }
 
 /** The whole page. */
@@ -34,6 +35,9 @@ export function WorkbenchPage() {
     lead: (
       <div key="lead" className="lead">
         <FaultBoundary workbench={workbench}>
+          <ClaimsSection />
+        </FaultBoundary>
+        <FaultBoundary workbench={workbench}>
           <GridSection />
         </FaultBoundary>
       </div>
@@ -41,6 +45,16 @@ export function WorkbenchPage() {
     figures: (
       <FaultBoundary key="figures" workbench={workbench}>
         <FiguresSection />
+      </FaultBoundary>
+    ),
+    tally: (
+      <FaultBoundary key="tally" workbench={workbench}>
+        <TallySection />
+      </FaultBoundary>
+    ),
+    points: (
+      <FaultBoundary key="points" workbench={workbench}>
+        <PointsSection />
       </FaultBoundary>
     ),
   }
@@ -55,9 +69,12 @@ export function WorkbenchPage() {
         <SettingSection />
       </FaultBoundary>
       <nav className="jump" aria-label="Parts of the page">
+        <a href="#claims">Claims</a>
         <a href="#grid">Grid</a>
         <a href="#draft">Draft</a>
         <a href="#figures">Figures</a>
+        <a href="#tally">Tally</a>
+        <a href="#points">Points</a>
       </nav>
       <main className="paper">{ORDER[layout].map(part => parts[part])}</main>
       <DropZone />

@@ -30,8 +30,8 @@ export interface WorkerLike {
 /** Milliseconds that a worker has to answer a cancel before it is replaced. */
 export const PATIENCE = 200
 
-/** Milliseconds between calls of `results`: often enough to look alive. */
-export const PACE = 50
+/** Milliseconds between calls of `results`: often enough to look alive, seldom enough to leave the sweep its time. */
+export const PACE = 100
 
 interface Running {
   readonly request: SweepRequest
