@@ -12,6 +12,7 @@ const PROPERTIES = [
   'font-style',
   'font-weight',
   'text-anchor',
+  'paint-order',
 ] as const
 
 /** Pixels of a PNG to a unit of the drawing. */
