@@ -30,8 +30,10 @@ export interface WorkerLike {
 /** Milliseconds that a worker has to answer a cancel before it is replaced. */
 export const PATIENCE = 200
 
-/** Milliseconds between calls of `results`: often enough to look alive, seldom enough to leave the sweep its time. */
+/** Milliseconds between calls of `results`, at least: often enough to look alive. */
 export const PACE = 100
+/** The same as a multiple of what the last call gave the page to do, so that drawing never takes all of its time. */
+const LEISURE = 3
 
 interface Running {
   readonly request: SweepRequest
@@ -54,6 +56,7 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
   let running: Running | undefined
   /** Asked for while an earlier sweep was still stopping. */
   let next: Asked | undefined
+  let pace = PACE
 
   // Made ahead of the first sweep, which then need not wait for its start.
   worker = hire()
@@ -82,7 +85,7 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
     switch (message.kind) {
       case 'result':
         running.waiting.push(message.result)
-        running.due ??= setTimeout(passOn, PACE, running)
+        running.due ??= setTimeout(passOn, pace, running)
         break
       case 'ended':
         end(message.complete ? 'done' : 'cancelled')
@@ -97,7 +100,13 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
     of.due = undefined
     const results = of.waiting
     of.waiting = []
-    if (results.length > 0) of.listener.results(results)
+    if (results.length === 0) return
+    const begun = performance.now()
+    of.listener.results(results)
+    // The next turn comes once the page has drawn them.
+    setTimeout(() => {
+      pace = Math.max(PACE, LEISURE * (performance.now() - begun))
+    })
   }
 
   function end(how: SweepEnd, crash?: string): void {
