@@ -41,7 +41,10 @@ function place(doc: Text, cells: readonly MarginCell[]): Margin {
   return put(
     cells
       .filter(({ line }) => line <= doc.lines)
-      .map(cell => ({ at: doc.line(cell.line).from, marker: new CellMarker(cell) })),
+      .map(cell => {
+        const { from, length } = doc.line(cell.line)
+        return { at: from, marker: new CellMarker(cell, length) }
+      }),
   )
 }
 
@@ -57,6 +60,8 @@ function put(placed: readonly Placed[]): Margin {
 
 /** Pixels of the costliest line's bar. */
 const BAR = 48
+/** Pixels of the word beside a line that was expanded. */
+const NOTE = 72
 /** Shares of the routine's time from which a count is set bold, and below which it is set back. */
 const HOT = 0.1
 const COLD = 0.01
@@ -70,15 +75,19 @@ const WORDS: Readonly<Record<VerdictWord, string>> = {
 }
 
 class CellMarker extends GutterMarker {
-  constructor(readonly cell: MarginCell) {
+  constructor(
+    readonly cell: MarginCell,
+    /** Signs on the cell's line. */
+    readonly length: number,
+  ) {
     super()
   }
 
   override eq(other: CellMarker): boolean {
-    return JSON.stringify(this.cell) === JSON.stringify(other.cell)
+    return this.length === other.length && JSON.stringify(this.cell) === JSON.stringify(other.cell)
   }
 
-  override toDOM(): HTMLElement {
+  override toDOM(view: EditorView): HTMLElement {
     const { cell } = this
     const row = document.createElement('div')
     row.className = `cell cell-${cell.kind}`
@@ -106,10 +115,13 @@ class CellMarker extends GutterMarker {
       bar.style.width = `${Math.max(cell.bar * BAR, cell.time > 0 ? 1 : 0)}px`
       row.append(bar)
       if (cell.expanded !== undefined) {
-        const note = document.createElement('em')
-        note.textContent = 'expanded'
-        note.title = `${cell.expanded.toFixed(1)} operations a use on average, all of them in this line's count`
-        row.append(note)
+        row.title = `Expanded: ${cell.expanded.toFixed(1)} operations a use on average, all of them in this line's count`
+        // Beside the code where there is room, never over it.
+        if (this.length * view.defaultCharacterWidth + NOTE < view.contentDOM.clientWidth) {
+          const note = document.createElement('em')
+          note.textContent = 'expanded'
+          row.append(note)
+        }
       }
     }
     return row

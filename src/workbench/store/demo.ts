@@ -23,7 +23,7 @@ begin
     c[j] <- 0
   end
   for i from 0 to n - 1
-    j, x <- a[i] * m      # the class is j
+    j, x <- a[i] * m
     c[j] <- c[j] + 1
   end
   p <- 0
