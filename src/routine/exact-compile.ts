@@ -252,6 +252,7 @@ class Compiler {
 
   private call({ function: name, arguments: given, span }: Exact & { kind: 'call' }): Step {
     const steps = given.map(argument => this.exact(argument))
+    if (name === 'ceil' || name === 'floor') return this.rounded(name, given[0]!, steps[0]!, span)
     if (name !== 'min' && name !== 'max') return unary(steps[0]!, span, FUNCTIONS[name])
     return evaluation => {
       let chosen: ExactValue | undefined
@@ -262,6 +263,19 @@ class Compiler {
         chosen = chosen === undefined ? value : extreme(chosen, value, name)
       }
       return quicken(chosen!)
+    }
+  }
+
+  /** `ceil` and `floor`; of lg of a machine number without any detour, since long sums have it in each term. */
+  private rounded(name: 'ceil' | 'floor', operand: Exact, step: Step, span: Span): Step {
+    const plain = unary(step, span, FUNCTIONS[name])
+    if (operand.kind !== 'call' || operand.function !== 'lg') return plain
+    const inner = this.exact(operand.arguments[0]!)
+    const up = name === 'ceil'
+    return evaluation => {
+      const x = inner(evaluation)
+      if (typeof x !== 'number' || x < 1) return plain(evaluation)
+      return up ? (x === 1 ? 0 : floorLg(x - 1) + 1) : floorLg(x)
     }
   }
 
@@ -358,6 +372,11 @@ function wholeOf(answer: QuickAnswer, span: Span): number | bigint | ExactProble
   if (typeof answer !== 'object') return typeof answer === 'bigint' ? (quicken(answer) as number | bigint) : answer
   if (isProblem(answer)) return answer
   return placeProblem(exactProblem('undefined', 'The end of a range is a whole number.'), span)
+}
+
+/** floor(lg(x)) of a safe whole number x >= 1. */
+function floorLg(x: number): number {
+  return x < 2 ** 32 ? 31 - Math.clz32(x) : 63 - Math.clz32(Math.floor(x / 2 ** 32))
 }
 
 function unary(operand: Step, span: Span, work: (x: ExactValue) => Answer): Step {

@@ -23,6 +23,7 @@ import {
   divideRationals,
   exactRoot,
   floorDivide,
+  floorLogarithm,
   floorRational,
   moduloRationals,
   multiplyRationals,
@@ -280,6 +281,8 @@ export function logarithmOf(x: ExactValue): Answer {
 
 export function floor(x: ExactValue): bigint | ExactProblem {
   if (!isReal(x)) return floorRational(x)
+  const known = floorOfLogarithm(x)
+  if (known !== undefined) return known
   const whole = x.refine(({ low, high }, bits) => {
     const [down, up] = [low >> BigInt(bits), high >> BigInt(bits)]
     return down === up ? down : undefined
@@ -289,11 +292,21 @@ export function floor(x: ExactValue): bigint | ExactProblem {
 
 export function ceil(x: ExactValue): bigint | ExactProblem {
   if (!isReal(x)) return ceilRational(x)
+  const known = floorOfLogarithm(x)
+  // A real is not known to be whole, and a logarithm that is real is not whole.
+  if (known !== undefined) return known + 1n
   const whole = x.refine(({ low, high }, bits) => {
     const [down, up] = [-(-low >> BigInt(bits)), -(-high >> BigInt(bits))]
     return down === up ? down : undefined
   })
   return whole ?? exactProblem('undecided', `${UNDECIDED} which whole number is next above.`)
+}
+
+/** floor(lg(x)) needs no enclosure: it is told by the length of x. */
+function floorOfLogarithm({ form }: Real): bigint | undefined {
+  if (form?.kind !== 'logs' || form.terms.length !== 1 || typeof form.constant !== 'bigint') return undefined
+  const { factor, argument } = form.terms[0]!
+  return factor === 1n ? form.constant + BigInt(floorLogarithm(argument)) : undefined
 }
 
 export function absolute(x: ExactValue): ExactValue {

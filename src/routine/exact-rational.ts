@@ -117,6 +117,15 @@ export function exponentOfTwo(x: Rational): number | undefined {
   return exact ? shift : undefined
 }
 
+/** The largest k with 2^k <= x, for x > 0. */
+export function floorLogarithm(x: Rational): number {
+  const top = numeratorOf(x)
+  const bottom = denominatorOf(x)
+  const shift = bitLength(top) - bitLength(bottom)
+  const below = shift >= 0 ? top < bottom << BigInt(shift) : top << BigInt(-shift) < bottom
+  return below ? shift - 1 : shift
+}
+
 /** The largest whole number whose `degree`th power is at most x; x >= 0, degree >= 1. Newton's iteration. */
 export function floorRoot(x: bigint, degree: number): bigint {
   if (x < 2n || degree === 1) return x
@@ -131,8 +140,13 @@ export function floorRoot(x: bigint, degree: number): bigint {
   }
 }
 
-/** The `degree`th root of x > 0 where it is rational. */
+/** Parts of fractions up to this many bits are brought to lowest terms to see whether they have an exact root. */
+const MOST_REDUCED_BITS = 1 << 14
+
+/** The `degree`th root of x > 0 where it is found to be rational; of whole numbers none is missed. */
 export function exactRoot(x: Rational, degree: number): Rational | undefined {
+  if (typeof x !== 'bigint' && bitLength(x.numerator) + bitLength(x.denominator) > MOST_REDUCED_BITS)
+    return undefined
   const root = (part: bigint) => {
     const near = floorRoot(part, degree)
     return near ** BigInt(degree) === part ? near : undefined

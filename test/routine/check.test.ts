@@ -885,9 +885,9 @@ describe('the checked routine', () => {
       'in s',
       'table t',
       'table u',
-      'inout d',
-      'out b',
       'work c',
+      'out b',
+      'inout d',
     ])
     expect(routine!.needs).toHaveLength(1)
     expect(routine!.checks).toHaveLength(1)

@@ -2,6 +2,7 @@ import type { Declaration, DeclaredItem, Exact, Name, ProcedureTree, RoutineTree
 import { namesInExact } from '../exact-names'
 import type {
   ArrayDeclaration,
+  ArrayRole,
   FeedDeclaration,
   FixDeclaration,
   LetDeclaration,
@@ -19,7 +20,7 @@ type Declarations = Omit<Routine, 'name' | 'tree' | 'text'>
 type Listed = 'in' | 'out' | 'inout' | 'work'
 
 /** Read-only arrays first, so that one compare tells an address that may be stored to. */
-const MEMORY_ORDER = ['in', 'table', 'inout', 'out', 'work'] as const
+const MEMORY_ORDER: readonly (readonly ArrayRole[])[] = [['in'], ['table'], ['inout', 'out', 'work']]
 
 /**
  * Gathers what a routine declares. Names come first, all of them, so that a line may use what a later one declares; then
@@ -111,7 +112,7 @@ export class DeclarationCheck {
   private declarations(): Declarations {
     const of = <K extends Declaration['kind']>(kind: K) =>
       this.tree.declarations.filter((each): each is Extract<Declaration, { kind: K }> => each.kind === kind)
-    const arrays = MEMORY_ORDER.flatMap(role => this.arrays.filter(array => array.role === role))
+    const arrays = MEMORY_ORDER.flatMap(roles => this.arrays.filter(({ role }) => roles.includes(role)))
     return {
       sizes: this.sizes,
       arrays,

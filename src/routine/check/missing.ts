@@ -6,6 +6,9 @@ import type { Declaring } from './declaring'
 import type { Report } from './report'
 import type { VariableScope } from './scope'
 
+/** Names that similar ones are looked for; a text with more of them is no draft of one routine. */
+const MOST_SOUGHT = 50
+
 /** How an array that nobody declared is used. */
 export type Use = 'load' | 'store' | 'read'
 
@@ -33,6 +36,7 @@ interface MissingWord {
 export class Missing {
   private readonly arrays = new Map<string, MissingArray>()
   private readonly words = new Map<string, MissingWord>()
+  private readonly nearest = new Map<string, string | undefined>()
 
   constructor(
     private readonly report: Report,
@@ -88,7 +92,7 @@ export class Missing {
   /** Reports an array; true where the remedy is a declaration of its own. */
   private tellArray(name: string, { places, uses, scope }: MissingArray, size: string, role: string): boolean {
     const arrays = this.declared.names(meaning => meaning.kind === 'array')
-    const near = nearestName(name, [...arrays, ...(scope?.names() ?? [])])
+    const near = this.near(`array ${name}`, () => nearestName(name, [...arrays, ...(scope?.names() ?? [])]))
     const line = `${role} ${name}[${size}]`
     const stored = uses.includes('store')
     if (near) {
@@ -142,8 +146,16 @@ export class Missing {
   }
 
   private nearTo(name: string, scope: VariableScope | undefined): string | undefined {
-    const words = this.declared.names(({ kind }) => kind !== 'array' && kind !== 'procedure' && kind !== 'scalar')
-    return nearestName(name, [...(scope?.names() ?? []), ...words])
+    return this.near(`word ${scope?.procedure?.name.text ?? ''} ${name}`, () => {
+      // A scope has its scalars among its own names.
+      const words = this.declared.names(({ kind }) => !['array', 'procedure', scope ? 'scalar' : ''].includes(kind))
+      return nearestName(name, [...(scope?.names() ?? []), ...words])
+    })
+  }
+
+  private near(key: string, seek: () => string | undefined): string | undefined {
+    if (!this.nearest.has(key) && this.nearest.size < MOST_SOUGHT) this.nearest.set(key, seek())
+    return this.nearest.get(key)
   }
 }
 

@@ -15,6 +15,9 @@ export interface Remark {
   readonly cause?: string
 }
 
+/** The most errors that one routine is given; past it a last one says that there are more. */
+const MOST_ERRORS = 200
+
 /** What is said of one routine while it is checked. */
 export class Report {
   private readonly errors: Diagnostic[] = []
@@ -51,7 +54,12 @@ export class Report {
   /** Everything said, in the order of the text. */
   diagnostics(): Diagnostic[] {
     const all = this.hasErrors || this.broken.length > 0 ? this.errors : [...this.errors, ...this.warnings]
-    return [...all].sort((a, b) => a.span.start - b.span.start)
+    const sorted = [...all].sort((a, b) => a.span.start - b.span.start)
+    const dropped = sorted.length - MOST_ERRORS
+    if (dropped <= 0) return sorted
+    const { severity, span } = sorted[MOST_ERRORS]!
+    const message = `${dropped} more like these are not listed.`
+    return [...sorted.slice(0, MOST_ERRORS), { severity, span, message, remedy: 'Correct those above first.' }]
   }
 
   private add(severity: Diagnostic['severity'], to: Diagnostic[], remark: Remark): void {
