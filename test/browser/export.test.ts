@@ -29,7 +29,7 @@ async function openTotal() {
   const { page } = opened
   await pasteDraft(page, TOTAL)
   await page.locator('#slot-sets').click()
-  await page.getByLabel('with', { exact: true }).check()
+  await page.getByLabel(/^without multiplication/).uncheck()
   await page.keyboard.press('Enter')
   await sweepEnds(page)
   await setAndSweep(page, 'sizes', 'Values of n', '100, 200, 400')
@@ -123,7 +123,7 @@ test('the table of points sorts, and its rows move the reading', async () => {
   await page.getByRole('button', { name: 'Show the table of 9 points' }).click()
   const table = page.locator('.point-table')
   await table.getByRole('button', { name: 'most' }).click()
-  expect(await table.locator('th[aria-sort=descending]').count()).toBe(1)
+  await table.locator('th[aria-sort=descending]').waitFor()
   await table.getByRole('button', { name: 'Read n = 400, w = 64', exact: false }).click()
   await expect.poll(() => page.locator('#slot-reading').textContent()).toMatch(/400.*64/)
   expect(errors).toEqual([])
