@@ -163,6 +163,31 @@ describe('a draft of the author', () => {
     await close()
   })
 
+  test('opens from a file that is dropped on the page', async () => {
+    const { page, errors, close } = await openDemo()
+    const drop = (name: string, bytes: number[]) =>
+      page.evaluate(
+        ([file, content]) => {
+          const data = new DataTransfer()
+          data.items.add(new File([new Uint8Array(content as number[])], file as string))
+          for (const type of ['dragenter', 'dragover', 'drop'])
+            document
+              .querySelector('.cm-content')
+              ?.dispatchEvent(new DragEvent(type, { dataTransfer: data, bubbles: true, cancelable: true }))
+        },
+        [name, bytes] as const,
+      )
+    await drop('gauges.txt', [...Buffer.from(TOTAL)])
+    await page.getByText('gauges.txt is open.').waitFor()
+    expect(await page.getByLabel('File name of the draft').inputValue()).toBe('gauges.tally')
+    await expect.poll(() => codeOf(page)).toContain('routine total')
+    await drop('gauges.png', [0x89, 0x50, 0x4e, 0x47, 0, 0])
+    await page.getByText(/gauges\.png was not opened: it is no text/).waitFor()
+    await expect.poll(() => codeOf(page)).toContain('routine total')
+    expect(errors).toEqual([])
+    await close()
+  })
+
   test('is laid out by Format, as a change that can be undone', async () => {
     const { page, close } = await openDemo()
     await pasteDraft(page, TOTAL.replace('  lo <- 0', 'lo<-0'))

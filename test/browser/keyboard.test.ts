@@ -45,10 +45,10 @@ test('everything is reached and done from the keyboard', async () => {
   await cell.focus()
   await page.keyboard.press('Home')
   await page.keyboard.press('PageUp')
-  await expect.poll(() => said(page.locator('#slot-reading'))).toMatch(/n = 25, w = 16, with /)
+  await expect.poll(() => said(page.locator('#slot-reading'))).toMatch(/n = 2\^5, w = 16, with /)
   await page.keyboard.press('ArrowDown')
   await page.keyboard.press('ArrowRight')
-  await expect.poll(() => said(page.locator('#slot-reading'))).toMatch(/n = 26, w = 32, with /)
+  await expect.poll(() => said(page.locator('#slot-reading'))).toMatch(/n = 2\^6, w = 32, with /)
 
   // The draft: Tab indents, Escape and Tab leaves; Control and Enter sweeps.
   await page.locator('.cm-content').focus()

@@ -44,10 +44,7 @@ export function DraftSection() {
           workbench.write(text)
         },
         onFormat: format,
-        onSweep() {
-          workbench.checkNow()
-          workbench.sweep()
-        },
+        onSweep: () => workbench.sweep(),
       },
       HELP,
     )
@@ -93,12 +90,11 @@ export function DraftSection() {
 
   // A new sweep's cells stand by the lines of its own text; while the author writes on they move along.
   const current = record !== undefined && record.text === draft.text
-  // biome-ignore lint/correctness/useExhaustiveDependencies: cells already shown move by themselves while the text changes
   useEffect(() => {
     const cells = record && current ? marginCells(record, reading) : undefined
     if (cells) view.current?.dispatch({ effects: showMargin.of(cells) })
     else if (!record) view.current?.dispatch({ effects: showMargin.of([]) })
-  }, [record, reading])
+  }, [record, reading, current])
 
   useEffect(() => {
     const editor = view.current
@@ -112,7 +108,7 @@ export function DraftSection() {
       <div className="draft-head">
         <h2>
           <b className="run-in">Draft.</b> <RoutineSlot />
-          <ReadingSlot />
+          <ReadingSlot opens={checked.names.length < 2} />
         </h2>
         <button type="button" className="small" onClick={format} title="Alt+Shift+F">
           Format
@@ -123,6 +119,9 @@ export function DraftSection() {
         message, Alt and Enter carries out its remedy. Alt, Shift and F lays the draft out.
       </p>
       <div className="draft-columns" aria-hidden="true">
+        <span className="keys">
+          <kbd>Ctrl Enter</kbd> sweeps <kbd>F8</kbd> next <kbd>Alt Enter</kbd> mends <kbd>Esc Tab</kbd> leaves
+        </span>
         {record && <span>operations</span>}
       </div>
       <div ref={place} className="draft-text" />

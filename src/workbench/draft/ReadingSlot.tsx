@@ -7,8 +7,8 @@ import { SET_WORDS } from '../store/point-words'
 import type { Reading, SweepRecord } from '../store/record'
 import { useWorkbench, useWorkbenchState } from '../use'
 
-/** "Read at n = 4096, w = 16, without multiplication": the reading point, and an editor for it. */
-export function ReadingSlot() {
+/** "Read at n = 4096, w = 16, without multiplication": the reading point, and an editor for it. `opens` its sentence. */
+export function ReadingSlot({ opens }: { readonly opens: boolean }) {
   const workbench = useWorkbench()
   const { record, reading } = useWorkbenchState(state => ({ record: state.record, reading: state.reading }))
   const [before, setBefore] = useState<Reading>()
@@ -23,7 +23,7 @@ export function ReadingSlot() {
   }
   return (
     <span className="reading">
-      read at{' '}
+      {opens ? 'Read' : 'read'} at{' '}
       <Slot
         id="slot-reading"
         opens="change the point that is read"

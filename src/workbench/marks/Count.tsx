@@ -30,13 +30,14 @@ export function binaryExponent(n: number): number | undefined {
   return Number.isInteger(exponent) && exponent >= 5 ? exponent : undefined
 }
 
-/** A size: a power of two as 2 with its exponent, any other number in digits. */
+/** A size: a power of two as 2 with its exponent (read out and copied as `2^16`), any other number in digits. */
 export function SizeValue({ of }: { readonly of: number }) {
   const exponent = binaryExponent(of)
   if (exponent === undefined) return <Count of={of} />
   return (
     <>
-      2<sup>{exponent}</sup>
+      2<span className="sr">^</span>
+      <sup>{exponent}</sup>
     </>
   )
 }

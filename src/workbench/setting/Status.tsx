@@ -18,11 +18,6 @@ export function Status() {
   const stale = isStale({ record, checked, draft, settingRead })
   const wall = running ? undefined : obstacle({ checked, draft, settingRead })
 
-  function sweep() {
-    workbench.checkNow()
-    workbench.sweep()
-  }
-
   return (
     <div className="status">
       <div className="status-words">
@@ -48,7 +43,7 @@ export function Status() {
             </button>
           )
         ) : (
-          <button type="button" className={record && !stale ? 'go plain' : 'go'} onClick={sweep}>
+          <button type="button" className={record && !stale ? 'go plain' : 'go'} onClick={() => workbench.sweep()}>
             {record && !stale ? 'Run again' : 'Run the sweep'}
           </button>
         )}

@@ -61,10 +61,15 @@ export function createWorkbench(world: World): Workbench {
   }
 
   const sweeping = sweepingOf(store, world)
+  const drafting = draftingOf(store, world, { notify, dismiss })
   const workbench: Workbench = {
     store,
     ...sweeping,
-    ...draftingOf(store, world, { notify, dismiss }),
+    ...drafting,
+    sweep() {
+      drafting.checkNow()
+      return sweeping.sweep()
+    },
     ...keepingOf(store, world, { notify, dismiss }),
     tryWith: text => readSetting(text, store.getState().shape),
     takeSetting(text) {
