@@ -1,19 +1,8 @@
 import { downloadBlob, downloadText } from '../download'
 
 /** Properties that a drawing takes from the page's style; written into it, so that it stands alone. */
-const PROPERTIES = [
-  'fill',
-  'stroke',
-  'stroke-width',
-  'stroke-dasharray',
-  'stroke-linecap',
-  'font-family',
-  'font-size',
-  'font-style',
-  'font-weight',
-  'text-anchor',
-  'paint-order',
-] as const
+const STROKE = ['stroke-width', 'stroke-dasharray', 'stroke-linecap', 'paint-order'] as const
+const TYPE = ['font-family', 'font-size', 'font-style', 'font-weight', 'text-anchor'] as const
 
 /** Pixels of a PNG to a unit of the drawing. */
 const PNG_SCALE = 2
@@ -63,10 +52,16 @@ export function writeSvg(drawing: SVGSVGElement, text: FigureText): string {
 
 function writeStyle(element: SVGElement): void {
   const style = getComputedStyle(element)
-  for (const property of PROPERTIES) {
-    const value = style.getPropertyValue(property)
-    if (value !== '') element.setAttribute(property, value)
+  const isType = element.localName === 'text' || element.localName === 'tspan'
+  const write = (properties: readonly string[]) => {
+    for (const property of properties) {
+      const value = style.getPropertyValue(property)
+      if (value !== '') element.setAttribute(property, value)
+    }
   }
+  write(['fill', 'stroke'])
+  if (style.stroke !== 'none') write(STROKE)
+  if (isType) write(TYPE)
   element.removeAttribute('style')
   element.removeAttribute('class')
 }

@@ -21,6 +21,7 @@ export function planAxes(
     x: planAxis(marks, axis === 'n' ? view.scales.n : view.scales.w, size.width - FRAME.along, {
       marks,
       along: true,
+      digits: axis === 'w',
     }),
     y: planAxis(values, y.scale, size.height - FRAME.across, { fromZero: y.fromZero ?? y.scale === 'linear' }),
   }

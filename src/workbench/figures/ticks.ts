@@ -27,13 +27,19 @@ export function plainLabel(value: number): string {
 
 /**
  * An axis over the values to be drawn. Log scales hold where every value is above 0; else the axis is linear. Powers of
- * two are marked where every value given in `marks` is one (sizes that double), else powers of ten.
+ * two are marked where every value given in `marks` is one (sizes that double), else powers of ten; with `digits` no label
+ * has an exponent.
  */
 export function planAxis(
   values: readonly number[],
   wanted: AxisScale,
   pixels: number,
-  options: { readonly marks?: readonly number[]; readonly fromZero?: boolean; readonly along?: boolean } = {},
+  options: {
+    readonly marks?: readonly number[]
+    readonly fromZero?: boolean
+    readonly along?: boolean
+    readonly digits?: boolean
+  } = {},
 ): AxisPlan {
   const finite = values.filter(Number.isFinite)
   const least = finite.length > 0 ? Math.min(...finite) : 0
@@ -42,7 +48,10 @@ export function planAxis(
   const marks = options.marks ?? []
   const powers = marks.length > 1 && marks.every(value => value > 0 && Number.isInteger(Math.log2(value)))
   if (wanted === 'log' && least > 0) {
-    return powers ? planPowers(2, least, most, pixels, gap, false) : planPowers(10, least, most, pixels, gap, true)
+    const plan = powers
+      ? planPowers(2, least, most, pixels, gap, false)
+      : planPowers(10, least, most, pixels, gap, true)
+    return options.digits ? { ...plan, ticks: plan.ticks.map(inDigits) } : plan
   }
   const low = options.fromZero ? Math.min(0, least) : least
   const high = most > low ? most : low + 1
@@ -91,6 +100,10 @@ function planPowers(
     return { value: base ** exponent, text: String(base), exponent, bare }
   })
   return { scale: 'log', domain: [low, high], ticks }
+}
+
+function inDigits({ value, bare }: Tick): Tick {
+  return { value, text: plainLabel(value), bare }
 }
 
 function linearTicks(low: number, high: number, step: number): Tick[] {
