@@ -8,6 +8,7 @@ import {
   programUnder,
   runBinding,
   type Setting,
+  wayProblem,
 } from '../sweep'
 import { type CountReport, writeCountJson } from './count-json'
 import { writeCountText } from './count-text'
@@ -50,6 +51,8 @@ export async function count(given: Arguments, terminal: Terminal): Promise<Exit>
   const fed = data
     ? takeData(data.file, readInput(data.data, binding, seed))
     : takeData(source.file, feedInput(binding, setting.pattern, seed))
+  const unfit = wayProblem(point.width, way)
+  if (unfit) throw misuse(unfit, 'leave --way out')
   const options = way ? { way } : {}
   const result = await runBinding(binding, fed.input, options).catch(error => memoryProblem(error, binding))
   if ('problem' in result) throw new Leave(EXIT.usage, sayAt(source.file, undefined, result.problem))

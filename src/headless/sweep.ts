@@ -1,7 +1,7 @@
 import { mkdir, writeFile } from 'node:fs/promises'
 import { join, resolve } from 'node:path'
 import { weighTally } from '../machine'
-import { type PointResult, runSweep, type SweepResult, writeCsv, writeRecord } from '../sweep'
+import { failedTrial, type PointResult, runSweep, type SweepResult, writeCsv, writeRecord } from '../sweep'
 import { DISCLAIMER } from './count-text'
 import type { Arguments, Flag } from './flags'
 import { sayPlace, saySetting } from './say'
@@ -45,10 +45,13 @@ export async function sweepSource(given: Arguments, terminal: Terminal, source: 
  * Names the failed points and the first broken one on standard error, and gives the exit: failed before broken before
  * good. A grid with no point that ran is wrong use.
  */
-export function complainOf(terminal: Terminal, { file }: Source, { points }: SweepResult): Exit {
+export function complainOf(terminal: Terminal, { file }: Source, { points, setting }: SweepResult): Exit {
   const failed = points.filter(result => result.status === 'failed')
-  for (const { point, line, reason } of failed)
-    terminal.complain(`${file}${line === undefined ? '' : `:${line}`}: ${sayPlace(point)}: ${reason}`)
+  for (const result of failed) {
+    const { point, line, reason } = result
+    const trial = setting.trials > 1 ? `, trial ${(failedTrial(setting, result) ?? 0) + 1}` : ''
+    terminal.complain(`${file}${line === undefined ? '' : `:${line}`}: ${sayPlace(point)}${trial}: ${reason}`)
+  }
   if (failed.length > 0) return EXIT.failed
   const done = points.filter(result => result.status === 'done')
   if (done.length === 0) {

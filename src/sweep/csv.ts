@@ -1,6 +1,7 @@
 import { type Charges, type Tally, weighTally } from '../machine'
 import { OPERATION_CLASSES } from '../routine'
 import { printCharges } from './charges'
+import { failedTrial } from './point'
 import type { PointResult, SweepResult, TrialTally } from './result'
 import { printWidth } from './widths'
 
@@ -38,9 +39,11 @@ export function writeCsv(result: SweepResult): string {
         ...trialCells(trial, number, charges, charged),
         brokenBy(point),
       ])
-    const seed = point.status === 'failed' ? point.seed : ''
+    const failed = point.status === 'failed' ? point : undefined
+    const trial = failed && failedTrial(result.setting, failed)
+    const run = [trial === undefined ? '' : trial + 1, failed?.seed ?? '']
     const empty = new Array<string>(OPERATION_CLASSES.length + SPACES.length + 2).fill('')
-    return [[...place, '', seed, charged, ...empty, '', point.line ?? '', point.reason]]
+    return [[...place, ...run, charged, ...empty, '', point.line ?? '', point.reason]]
   })
   return [titles, ...rows].map(row => `${row.map(quoteCell).join(',')}\r\n`).join('')
 }

@@ -5,7 +5,17 @@ export { parseLets } from './lets'
 export { findMismatch } from './mismatch'
 export type { Misread } from './misread'
 export { nearestName } from './nearest'
-export { bindPoint, ENGINE_WIDTH, memoryProblem, type PointOptions, runBinding, runPoint, type Way } from './point'
+export {
+  bindPoint,
+  ENGINE_WIDTH,
+  failedTrial,
+  memoryProblem,
+  type PointOptions,
+  runBinding,
+  runPoint,
+  type Way,
+  wayProblem,
+} from './point'
 export { plainCount, writeRecord } from './record'
 export type { GridPoint, PointResult, SweepResult, TrialTally, Verdict } from './result'
 export { FEED_PATTERNS, type FeedPattern, type Setting, type SizeRange, type WidthChoice } from './setting'

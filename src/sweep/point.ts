@@ -34,6 +34,8 @@ export interface PointOptions {
   readonly breathe?: () => Promise<boolean>
 }
 
+type Failed = Extract<PointResult, { status: 'failed' }>
+
 /** The program's modules by width: source that stays the same is compiled once a width. */
 const modules = new WeakMap<Program, Map<number, Promise<CompiledProgram>>>()
 
@@ -61,6 +63,12 @@ export async function runBinding(binding: Binding, input: Input, options: PointO
 export function memoryProblem(error: unknown, { words }: Binding): { problem: string } {
   if (!(error instanceof RangeError) || /call stack/.test(error.message)) throw error
   return { problem: `this computer has no memory for the ${words} words of the run: ${error.message}` }
+}
+
+/** Why words of a width cannot be run by the way asked for; undefined where they can. */
+export function wayProblem(width: number, way: Way | undefined): string | undefined {
+  if (way !== 'engine' || width <= ENGINE_WIDTH) return undefined
+  return `words of ${width} bits are not compiled, only those of up to ${ENGINE_WIDTH}: run them by the reference`
 }
 
 /** Binds a program to a point of a setting, or says why the point is not run. */
@@ -98,6 +106,8 @@ export async function runPoint(
     return { status: 'refused', point, reason, ...(span ? { line: span.line } : {}) }
   }
   const { binding } = bound
+  const unfit = wayProblem(point.width, options.way)
+  if (unfit) return { status: 'refused', point, reason: unfit }
   const trials: TrialTally[] = []
   const verdicts: Verdict[][] = []
   for (let trial = 0; trial < setting.trials; trial++) {
@@ -116,6 +126,12 @@ export async function runPoint(
     if (await options.breathe?.()) return undefined
   }
   return { status: 'done', point, trials, verdicts: mergeVerdicts(verdicts, program.routine.claims) }
+}
+
+/** Which trial of its point failed, from 0: the one that has the seed. */
+export function failedTrial({ seed, trials }: Setting, { point, seed: failed }: Failed): number | undefined {
+  for (let trial = 0; trial < trials; trial++) if (trialSeed(seed, point, trial) === failed) return trial
+  return undefined
 }
 
 /** The earlier tally where both say the same: trials of a routine that does not look at its input keep one between them. */

@@ -192,6 +192,7 @@ describe('count', () => {
     ['count total.tally --n 4 --set ful', '--set ful: there is no such choice; did you mean full?'],
     ['count total.tally --n 4 --feed sorte', '--feed sorte: there is no such choice; did you mean sorted?'],
     ['count total.tally --n 4 --way fast', '--way fast: there is no such choice; choose engine, reference'],
+    ['count total.tally --n 4 --way engine --w 65', 'words of 65 bits are not compiled'],
     ['count total.tally --n 4 --charges move', '--charges: "move" is neither a preset nor a price'],
     ['count total.tally --n 4 --let k=8', 'total has no let k; it has no lets'],
     ['count total.tally --n 4 --size m=8', 'total has no size m; it has n'],
@@ -346,6 +347,17 @@ describe('sweep', () => {
     const { exit, error } = await tallyword('sweep total.tally --n 300 --w 8')
     expect(exit).toBe(2)
     expect(error).toContain('none of the 1 points could be run')
+  })
+
+  test('a trial that fails is named, and count repeats it', async () => {
+    const file = routine('picky.tally', 'routine picky\n  in a[n]\n  out s\nbegin\n  s <- 10 / a[0]\nend\n')
+    const setting = ['--n', '1', '--w', '4', '--set', 'extended']
+    const { exit, error } = await run(['sweep', file, ...setting, '--trials', '200'])
+    expect(exit).toBe(3)
+    const trial = /n = 1, w = 4, extended, trial (\d+): line 5: 10 is divided by 0/.exec(error)![1]!
+    expect(Number(trial)).toBeGreaterThan(1)
+    expect((await run(['count', file, ...setting, '--trial', trial])).exit).toBe(3)
+    expect((await run(['count', file, ...setting])).exit).toBe(0)
   })
 
   test('a point that fails ends with 3, and is named', async () => {

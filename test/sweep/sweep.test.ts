@@ -1,9 +1,11 @@
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
+import { compileProgram } from '../../src/engine'
 import { CHARGES, type Charges, weighTally } from '../../src/machine'
 import { type Program, readProgram } from '../../src/routine'
 import {
+  ENGINE_WIDTH,
   findMismatch,
   gridPoints,
   type PointResult,
@@ -203,6 +205,14 @@ describe('a sweep', () => {
     })
     expect(result.complete).toBe(false)
     expect(result.points.length).toBe(3)
+  })
+
+  test('compiles up to the width that it says', async () => {
+    await expect(compileProgram(total, ENGINE_WIDTH)).resolves.toBeDefined()
+    const given = setting({ sizes: { n: '4' }, widths: String(ENGINE_WIDTH + 1) })
+    const [wide] = (await runSweep(total, given, { way: 'engine' })).points
+    expect(wide).toMatchObject({ status: 'refused', reason: expect.stringContaining('run them by the reference') })
+    expect((await runSweep(total, given)).points[0]!.status).toBe('done')
   })
 
   test('lets messages in while it works', async () => {
