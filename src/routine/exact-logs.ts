@@ -6,6 +6,7 @@ import {
   divideRationals,
   exactRoot,
   exponentOfTwo,
+  greatestDivisor,
   multiplyRationals,
   negateRational,
   numeratorOf,
@@ -145,10 +146,10 @@ function productOf(factors: readonly Rational[]): Rational {
 function cancel(terms: readonly LogTerm[]): Rational | undefined {
   const d = terms.reduce((shared, { factor }) => {
     const bottom = denominatorOf(factor)
-    return (shared * bottom) / common(shared, bottom)
+    return (shared * bottom) / greatestDivisor(shared, bottom)
   }, 1n)
   const multiples = terms.map(({ factor }) => numeratorOf(factor) * (d / denominatorOf(factor)))
-  const shared = multiples.reduce(common)
+  const shared = multiples.reduce(greatestDivisor)
   const exponents = multiples.map(multiple => multiple / shared)
   const bits = terms.reduce((sum, { argument }, at) => {
     const size = bitLength(numeratorOf(argument)) + bitLength(denominatorOf(argument))
@@ -162,11 +163,6 @@ function cancel(terms: readonly LogTerm[]): Rational | undefined {
   )
   const exponent = exponentOfTwo(product)
   return exponent === undefined ? undefined : ratio(BigInt(exponent) * shared, d)
-}
-
-function common(a: bigint, b: bigint): bigint {
-  while (b !== 0n) [a, b] = [b, a % b]
-  return a
 }
 
 function encloseLogs(constant: Rational, terms: readonly LogTerm[], bits: number): Enclosure {
@@ -208,7 +204,7 @@ export function multiplyRoots(x: ExactValue, y: ExactValue): ExactValue | undefi
   const left = rootOf(x)
   const right = rootOf(y)
   if (!left || !right) return undefined
-  const degree = (left.degree * right.degree) / Number(common(BigInt(left.degree), BigInt(right.degree)))
+  const degree = (left.degree * right.degree) / Number(greatestDivisor(BigInt(left.degree), BigInt(right.degree)))
   if (degree > MOST_ROOT_DEGREE) return undefined
   const raised = [left, right].map(root => {
     const size = Math.max(bitLength(numeratorOf(root.radicand)), bitLength(denominatorOf(root.radicand)))

@@ -86,14 +86,6 @@ export function sumReals(numbers: readonly ExactValue[]): ExactValue {
   }, parts)
 }
 
-/** The sum of rational numbers, by halves, so that denominators stay small for long. */
-export function sumRationals(numbers: readonly Rational[]): Rational {
-  if (numbers.length === 0) return 0n
-  if (numbers.length === 1) return numbers[0]!
-  const middle = numbers.length >> 1
-  return addRationals(sumRationals(numbers.slice(0, middle)), sumRationals(numbers.slice(middle)))
-}
-
 export function subtract(x: ExactValue, y: ExactValue): Answer {
   return add(x, negate(y))
 }

@@ -26,9 +26,16 @@ export function ratio(numerator: bigint, denominator: bigint): Rational {
   return new Ratio(top / common, bottom / common)
 }
 
-function greatestDivisor(a: bigint, b: bigint): bigint {
-  while (b !== 0n) [a, b] = [b, a % b]
-  return a
+const SAFE = BigInt(Number.MAX_SAFE_INTEGER)
+
+/** The greatest common divisor of numbers from 0. */
+export function greatestDivisor(a: bigint, b: bigint): bigint {
+  while (b > SAFE) [a, b] = [b, a % b]
+  if (b === 0n) return a
+  // The rest fits machine numbers, whose remainders are exact and far quicker.
+  let [x, y] = [Number(b), Number(a % b)]
+  while (y !== 0) [x, y] = [y, x % y]
+  return BigInt(x)
 }
 
 /** The number in lowest terms; slow for parts of many thousand bits. */
@@ -49,6 +56,27 @@ export function addRationals(x: Rational, y: Rational): Rational {
   if (typeof x === 'bigint' && typeof y === 'bigint') return x + y
   const [a, b, c, d] = [numeratorOf(x), denominatorOf(x), numeratorOf(y), denominatorOf(y)]
   return b === d ? ratio(a + c, b) : ratio(a * d + c * b, b * d)
+}
+
+/** Parts of a long sum up to this size are brought to lowest terms: past it, products are cheaper than divisors. */
+const SUMMED_BELOW = 1n << 256n
+
+/** The sum of all, by halves, so that large numbers meet only large ones. */
+export function sumRationals(numbers: readonly Rational[]): Rational {
+  if (numbers.length === 0) return 0n
+  const [top, bottom] = sumBetween(numbers, 0, numbers.length)
+  return ratio(top, bottom)
+}
+
+function sumBetween(numbers: readonly Rational[], from: number, to: number): readonly [bigint, bigint] {
+  if (to - from === 1) return [numeratorOf(numbers[from]!), denominatorOf(numbers[from]!)]
+  const middle = (from + to) >> 1
+  const [a, b] = sumBetween(numbers, from, middle)
+  const [c, d] = sumBetween(numbers, middle, to)
+  const [top, bottom] = [a * d + c * b, b * d]
+  if (bottom >= SUMMED_BELOW) return [top, bottom]
+  const common = greatestDivisor(top < 0n ? -top : top, bottom)
+  return [top / common, bottom / common]
 }
 
 export function negateRational(x: Rational): Rational {

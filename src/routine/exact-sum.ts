@@ -1,6 +1,6 @@
-import { MOST_BITS, sumRationals, sumReals } from './exact-number'
+import { MOST_BITS, sumReals } from './exact-number'
 import type { Quick } from './exact-quick'
-import { addRationals, bitLength, type Rational, ratio } from './exact-rational'
+import { addRationals, bitLength, type Rational, ratio, sumRationals } from './exact-rational'
 import { type ExactValue, isReal, Real } from './exact-real'
 import { encloseRational } from './exact-series'
 

@@ -59,9 +59,9 @@ export function areSorted(words: Words): boolean {
 export function areSame(left: Words, right: Words): boolean {
   if (left.length !== right.length) return false
   if (left instanceof Uint32Array && right instanceof Uint32Array)
-    return areEqual(sortHalves(left, 1), sortHalves(right, 1))
+    return areEqual(sortHalves(left, left, [0]), sortHalves(right, right, [0]))
   if (left instanceof BigUint64Array && right instanceof BigUint64Array)
-    return areEqual(sortHalves(halvesOf(left), 2), sortHalves(halvesOf(right), 2))
+    return areEqual(sortHalves(left, halvesOf(left), [LOW, HIGH]), sortHalves(right, halvesOf(right), [LOW, HIGH]))
   return areEqual(sortBigints(left), sortBigints(right))
 }
 
@@ -78,20 +78,21 @@ const DIGIT_BITS = 11
 const DIGITS = 1 << DIGIT_BITS
 
 /**
- * Words of one half or two, in an order that depends on their values alone: digit by digit, stable, those digits left
- * out that never vary.
+ * The halves of words in the order of their values. `order` gives the place of each half in a word, the lowest first:
+ * digit by digit, stable, those digits left out that never vary.
  */
-function sortHalves(words: Uint32Array, step: 1 | 2): Uint32Array {
+function sortHalves(words: Words, halves: Uint32Array, order: readonly number[]): Uint32Array {
+  if (areSorted(words)) return halves
   const places = new Uint32Array(DIGITS)
-  let from = words
-  let spare = new Uint32Array(words.length)
-  for (let half = 0; half < step; half++) {
+  let from = halves
+  let spare: Uint32Array = new Uint32Array(halves.length)
+  for (const half of order) {
     for (let shift = 0; shift < 32; shift += DIGIT_BITS) {
-      if (!placeDigits(from, step, half, shift, places)) continue
+      if (!placeDigits(from, order.length, half, shift, places)) continue
       const into = spare
-      if (step === 1) moveHalves(from, into, shift, places)
+      if (order.length === 1) moveHalves(from, into, shift, places)
       else movePairs(from, into, half, shift, places)
-      spare = from === words ? new Uint32Array(words.length) : (from as Uint32Array<ArrayBuffer>)
+      spare = from === halves ? new Uint32Array(halves.length) : from
       from = into
     }
   }
