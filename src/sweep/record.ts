@@ -26,9 +26,11 @@ export function writeRecord(result: SweepResult): string {
     },
     generator: GENERATOR,
     complete,
-    points: points.map(point => plainPoint(point, setting.charges)),
   }
-  return `${JSON.stringify(record, undefined, 1)}\n`
+  // A line a point: readable, and a fraction of what it takes laid out in full.
+  const head = JSON.stringify(record, undefined, 1).replace(/\n\}$/, '')
+  const lines = points.map(point => `  ${JSON.stringify(plainPoint(point, setting.charges))}`)
+  return `${head},\n "points": [\n${lines.join(',\n')}\n ]\n}\n`
 }
 
 function plainPoint(result: PointResult, charges: Charges) {
