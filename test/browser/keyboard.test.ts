@@ -1,6 +1,6 @@
 import { expect, test } from 'vitest'
 import { openWorkbench } from './browser'
-import { codeOf, openDemo, outcomes, said, sweepEnds } from './page'
+import { codeOf, openDemo, outcomes, SOON, said, sweepEnds } from './page'
 
 test('everything is reached and done from the keyboard', async () => {
   const { page, errors, close } = await openDemo()
@@ -45,16 +45,16 @@ test('everything is reached and done from the keyboard', async () => {
   await cell.focus()
   await page.keyboard.press('Home')
   await page.keyboard.press('PageUp')
-  await expect.poll(() => said(page.locator('#slot-reading'))).toMatch(/n = 2\^5, w = 16, with /)
+  await expect.poll(() => said(page.locator('#slot-reading')), SOON).toMatch(/n = 2\^5, w = 16, with /)
   await page.keyboard.press('ArrowDown')
   await page.keyboard.press('ArrowRight')
-  await expect.poll(() => said(page.locator('#slot-reading'))).toMatch(/n = 2\^6, w = 32, with /)
+  await expect.poll(() => said(page.locator('#slot-reading')), SOON).toMatch(/n = 2\^6, w = 32, with /)
 
   // The draft: Tab indents, Escape and Tab leaves; Control and Enter sweeps.
   await page.locator('.cm-content').focus()
   await page.keyboard.press('ControlOrMeta+Home')
   await page.keyboard.press('Tab')
-  await expect.poll(() => codeOf(page)).toMatch(/^ {2}#/)
+  await expect.poll(() => codeOf(page), SOON).toMatch(/^ {2}#/)
   await page.keyboard.press('ControlOrMeta+Enter')
   await page.locator('.draft:not(.is-stale)').waitFor()
   await sweepEnds(page)
@@ -76,7 +76,7 @@ test('a remedy is carried out from the keyboard', async () => {
   await page.keyboard.press('F8')
   await page.keyboard.press('Alt+Enter')
   await page.locator('.message').waitFor({ state: 'detached' })
-  await expect.poll(() => codeOf(page)).toContain('xor')
+  await expect.poll(() => codeOf(page), SOON).toContain('xor')
   await close()
 })
 

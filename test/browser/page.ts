@@ -27,6 +27,9 @@ done:
 end
 `
 
+/** How long a page on a busy machine may take to show something. */
+export const SOON = { timeout: 20_000 }
+
 /** Waits until the sweep at hand has ended. */
 export async function sweepEnds(page: Page): Promise<void> {
   await page.getByRole('button', { name: 'Run again' }).waitFor()

@@ -34,6 +34,8 @@ export const PATIENCE = 200
 export const PACE = 100
 /** The same as a multiple of what the last call gave the page to do, so that drawing never takes all of its time. */
 const LEISURE = 3
+/** The same at most. */
+const SLOWEST = 1000
 
 interface Running {
   readonly request: SweepRequest
@@ -105,7 +107,7 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
     of.listener.results(results)
     // The next turn comes once the page has drawn them.
     setTimeout(() => {
-      pace = Math.max(PACE, LEISURE * (performance.now() - begun))
+      pace = Math.min(SLOWEST, Math.max(PACE, LEISURE * (performance.now() - begun)))
     })
   }
 
@@ -125,6 +127,7 @@ export function createSweeper(spawn: () => WorkerLike): Sweeper {
   function begin({ request, listener }: Asked): void {
     worker ??= hire()
     running = { request, listener, waiting: [] }
+    pace = PACE
     worker.postMessage({ kind: 'sweep', request })
   }
 
