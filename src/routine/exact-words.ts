@@ -77,39 +77,112 @@ function sortBigints(words: Words): bigint[] {
 const DIGIT_BITS = 11
 const DIGITS = 1 << DIGIT_BITS
 
+interface Digit {
+  readonly half: number
+  readonly shift: number
+}
+
+/** Moves a word on average that the end of a sort by insertion may make, before digits are the better way after all. */
+const MOST_MOVES = 8
+
 /**
- * The halves of words in the order of their values. `order` gives the place of each half in a word, the lowest first:
- * digit by digit, stable, those digits left out that never vary.
+ * The halves of words in the order of their values. `order` gives the place of each half in a word, the lowest first.
+ * Sorted by their two highest digits, random words stand all but in place, and insertion does the rest; words that it
+ * does not suit are sorted digit by digit, the lowest first.
  */
 function sortHalves(words: Words, halves: Uint32Array, order: readonly number[]): Uint32Array {
   if (areSorted(words)) return halves
-  const places = new Uint32Array(DIGITS)
+  const digits = varyingDigits(halves, order)
+  const spares: Spares = { places: new Uint32Array(DIGITS), spare: new Uint32Array(halves.length) }
+  if (digits.length <= 2) return sortDigits(halves, halves, order.length, digits, spares)
+  const rough = sortDigits(halves, halves, order.length, digits.slice(-2), spares)
+  const most = (MOST_MOVES * halves.length) / order.length
+  const isSorted = order.length === 1 ? insertHalves(rough, most) : insertPairs(rough, most)
+  return isSorted ? rough : sortDigits(rough, halves, order.length, digits, spares)
+}
+
+/** The digits that are not the same in all words, the lowest first. */
+function varyingDigits(halves: Uint32Array, order: readonly number[]): Digit[] {
+  return order.flatMap(half => {
+    const first = halves[half]!
+    let varying = 0
+    for (let at = half; at < halves.length; at += order.length) varying |= halves[at]! ^ first
+    const shifts = [0, DIGIT_BITS, 2 * DIGIT_BITS].filter(shift => (varying >>> shift) & (DIGITS - 1))
+    return shifts.map(shift => ({ half, shift }))
+  })
+}
+
+interface Spares {
+  readonly places: Uint32Array
+  spare: Uint32Array
+}
+
+/** Sorts by some digits, stably. `kept` is an array that is left as it is. */
+function sortDigits(
+  halves: Uint32Array,
+  kept: Uint32Array,
+  step: number,
+  digits: readonly Digit[],
+  spares: Spares,
+): Uint32Array {
   let from = halves
-  let spare: Uint32Array = new Uint32Array(halves.length)
-  for (const half of order) {
-    for (let shift = 0; shift < 32; shift += DIGIT_BITS) {
-      if (!placeDigits(from, order.length, half, shift, places)) continue
-      const into = spare
-      if (order.length === 1) moveHalves(from, into, shift, places)
-      else movePairs(from, into, half, shift, places)
-      spare = from === halves ? new Uint32Array(halves.length) : from
-      from = into
-    }
+  for (const { half, shift } of digits) {
+    const into = spares.spare
+    placeDigits(from, step, half, shift, spares.places)
+    if (step === 1) moveHalves(from, into, shift, spares.places)
+    else movePairs(from, into, half, shift, spares.places)
+    spares.spare = from === kept ? new Uint32Array(halves.length) : from
+    from = into
   }
   return from
 }
 
-/** Where the words of each digit begin in order; false where all words have the same one. */
-function placeDigits(words: Uint32Array, step: number, half: number, shift: number, places: Uint32Array): boolean {
+/** Where the words of each digit begin in order. */
+function placeDigits(words: Uint32Array, step: number, half: number, shift: number, places: Uint32Array): void {
   places.fill(0)
   for (let at = half; at < words.length; at += step) places[(words[at]! >>> shift) & (DIGITS - 1)]!++
-  const count = words.length / step
-  if (count === 0 || places[(words[half]! >>> shift) & (DIGITS - 1)] === count) return false
   let place = 0
   for (let digit = 0; digit < DIGITS; digit++) {
     const next = place + places[digit]!
     places[digit] = place
     place = next
+  }
+}
+
+/** Sorts by insertion; false, and in some order, where that takes more than `most` moves. */
+function insertHalves(words: Uint32Array, most: number): boolean {
+  let moves = 0
+  for (let at = 1; at < words.length; at++) {
+    const word = words[at]!
+    let to = at
+    while (to > 0 && words[to - 1]! > word) {
+      words[to] = words[to - 1]!
+      to--
+    }
+    words[to] = word
+    moves += at - to
+    if (moves > most) return false
+  }
+  return true
+}
+
+function insertPairs(words: Uint32Array, most: number): boolean {
+  let moves = 0
+  for (let at = 2; at < words.length; at += 2) {
+    const high = words[at + HIGH]!
+    const low = words[at + LOW]!
+    let to = at
+    while (to > 0) {
+      const before = words[to - 2 + HIGH]!
+      if (before < high || (before === high && words[to - 2 + LOW]! <= low)) break
+      words[to] = words[to - 2]!
+      words[to + 1] = words[to - 1]!
+      to -= 2
+    }
+    words[to + HIGH] = high
+    words[to + LOW] = low
+    moves += (at - to) / 2
+    if (moves > most) return false
   }
   return true
 }

@@ -61,6 +61,42 @@ describe.each([
   })
 })
 
+describe.each<[string, number, (random: () => bigint, at: number) => bigint]>([
+  ['random words of 32 bits', 32, random => random() & 0xffffffffn],
+  ['random words of 64 bits', 64, random => random()],
+  ['words that differ in their low bits alone', 64, random => (7n << 60n) | (random() & 0xfffffffn)],
+  ['words that crowd under few high bits', 64, random => random() & 0xc000_0000_0fff_ffffn],
+  ['words of 32 bits that crowd', 32, random => random() & 0x8003_ffffn],
+  ['falling words', 64, (_, at) => BigInt(10_000 - at) * 0x1_0001_0001n],
+  ['few distinct words', 64, random => (random() & 3n) * 0x4000_0001_0000_0001n],
+])('ten thousand %s', (_, width, draw) => {
+  let state = 88172645463325252n
+  const random = () => {
+    // Marsaglia's xorshift: the words need to be many, not good.
+    state ^= (state << 13n) & (2n ** 64n - 1n)
+    state ^= state >> 7n
+    state ^= (state << 17n) & (2n ** 64n - 1n)
+    return state
+  }
+  const words = Array.from({ length: 10_000 }, (_, at) => draw(random, at))
+  const pack = (list: readonly bigint[]) =>
+    width === 32 ? Uint32Array.from(list, Number) : BigUint64Array.from(list)
+  const turned = words.map((_, at) => words[(at * 7919 + 13) % words.length]!)
+
+  test('are the same in another order, and left as they were', () => {
+    const [left, right] = [pack(words), pack(turned)]
+    expect(areSame(left, right)).toBe(true)
+    expect(areSame(left, pack(sorted(words)))).toBe(true)
+    expect(left).toEqual(pack(words))
+    expect(right).toEqual(pack(turned))
+  })
+
+  test.each([0, 4_321, 9_999])('are not with the lowest bit of word %i changed', at => {
+    const changed = turned.with(at, turned[at]! ^ 1n)
+    expect(areSame(pack(words), pack(changed))).toBe(false)
+  })
+})
+
 test('sums past a run of 2^20 words stay exact', () => {
   const words = new Uint32Array((1 << 20) + 3).fill(2 ** 32 - 1)
   expect(sumWords(words)).toBe(BigInt(words.length) * (2n ** 32n - 1n))
