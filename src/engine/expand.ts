@@ -30,6 +30,25 @@ export function expandProgram(program: Program, set: InstructionSet): Program {
 /** Kept, so that the points of a grid share one expanded program, and so its modules. */
 const expanded = new WeakMap<Program, Map<InstructionSet, Program>>()
 
+/** What stands in for a use on a line, as a user reads it: a routine whose one procedure is called. */
+export interface ExpansionUse {
+  readonly line: number
+  readonly class: SwitchedClass
+  readonly text: string
+}
+
+/** The stand-ins that a program takes on a machine with this set, each line's once, in order of lines. */
+export function listExpansions(program: Program, set: InstructionSet): ExpansionUse[] {
+  const found = new Map<string, ExpansionUse>()
+  for (const operation of program.blocks.flatMap(block => block.operations)) {
+    const use = findUse(operation)
+    if (!use || set.on.has(use.class)) continue
+    const { line } = use.span
+    found.set(`${use.function} ${line}`, { line, class: use.class, text: expansionFor(use.function, set).text })
+  }
+  return [...found.values()].sort((a, b) => a.line - b.line)
+}
+
 /** An operation that the set takes away: what stands in, what it is given and where its results go. */
 interface Use {
   readonly function: ExpandedFunction

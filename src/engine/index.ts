@@ -1,7 +1,7 @@
 import type { Program } from '../routine'
 import { CompiledProgram } from './compiled'
 
-export { expandProgram } from './expand'
+export { type ExpansionUse, expandProgram, listExpansions } from './expand'
 export type { CompiledProgram }
 
 /** Compiles a program for one width, 2 to 64. Throws a RangeError past that. */

@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
 import { compileProgramSync } from '../../src/engine'
-import { expandProgram } from '../../src/engine/expand'
+import { expandProgram, listExpansions } from '../../src/engine/expand'
 import {
   applyBinary,
   applyUnary,
@@ -144,6 +144,16 @@ describe('an expansion', () => {
   test('leaves a program alone that uses nothing that is off', () => {
     const program = routine('z <- x + y\n  t <- 0')
     expect(expandProgram(program, INSTRUCTION_SETS['add-only'])).toBe(program)
+  })
+
+  test('can be read, as a routine in the notation', () => {
+    const set = INSTRUCTION_SETS['no-multiply']
+    const uses = listExpansions(routine('z <- x * y\n  z, t <- z * z'), set)
+    expect(uses.map(({ line, class: off }) => [line, off])).toEqual([
+      [5, 'multiply'],
+      [6, 'multiply'],
+    ])
+    for (const { text } of uses) expect(readProgram(text).program).toBeDefined()
   })
 
   test('is one procedure for each line and function', () => {

@@ -106,9 +106,7 @@ function PointTable({ record }: { readonly record: SweepRecord }) {
               onRead={() => workbench.read({ point: row.point.index, trial: 0 })}
             />
           ))}
-          {from + shown < rows.length && (
-            <tr style={{ height: (rows.length - from - shown) * ROW_HEIGHT }} />
-          )}
+          {from + shown < rows.length && <tr style={{ height: (rows.length - from - shown) * ROW_HEIGHT }} />}
         </tbody>
       </table>
     </div>

@@ -1,5 +1,7 @@
 import { useMemo } from 'react'
+import { listExpansions } from '../../engine/expand'
 import type { Count as CountValue } from '../../machine'
+import { INSTRUCTION_SETS } from '../../machine/machine'
 import { printCharges } from '../../sweep/charges'
 import { ratioText } from '../figures/captions'
 import { Count } from '../marks/Count'
@@ -37,8 +39,19 @@ export function TallySection() {
           {tallies.flatMap(({ set, tally }) =>
             (tally?.expanded ?? []).map(use => (
               <li key={`${set} ${use.line} ${use.class}`}>
-                {several && `${SHORT_SET_WORDS[set]}, `}
-                {expandedWords(use)}
+                <details className="expansion">
+                  <summary>
+                    {several && `${SHORT_SET_WORDS[set]}, `}
+                    {expandedWords(use)}
+                  </summary>
+                  {listExpansions(record.program, INSTRUCTION_SETS[set])
+                    .filter(each => each.line === use.line && each.class === use.class)
+                    .map(each => (
+                      <pre key={each.text}>
+                        <code>{each.text}</code>
+                      </pre>
+                    ))}
+                </details>
               </li>
             )),
           )}
