@@ -60,7 +60,9 @@ function PointTable({ record }: { readonly record: SweepRecord }) {
   const window = rows.slice(from, from + shown)
   // Another order starts at its top.
   // biome-ignore lint/correctness/useExhaustiveDependencies: runs when the order changes
-  useEffect(() => box.current?.scrollTo({ top: 0 }), [sort])
+  useEffect(() => {
+    box.current?.scrollTo({ top: 0 })
+  }, [sort])
   const size = record.program.routine.sizes[0] ?? 'n'
 
   return (
