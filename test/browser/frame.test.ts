@@ -32,7 +32,7 @@ describe('the demo', () => {
     expect(found.broken).toBeGreaterThan(0)
     // At w = 16 an index of 2^16 does not fit a word, with and without multiplication.
     expect(found.refused).toBe(2)
-    await expect.poll(() => said(page.locator('.status')), SOON).toMatch(/^64 of 66 points, 192 tallies, /)
+    await expect.poll(() => said(page.locator('.status')), SOON).toMatch(/^64 of 66 points, 128 tallies, /)
     expect(errors).toEqual([])
     await close()
   })

@@ -79,6 +79,6 @@ export const DEMO_SETTING: SettingText = {
   others: {},
   lets: {},
   pattern: 'uniform',
-  trials: '3',
+  trials: '2',
   seed: '1',
 }
