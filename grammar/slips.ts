@@ -62,6 +62,17 @@ export const SLIPS: readonly Recogniser[] = [
     }
   },
 
+  function lineNumber({ tokens, at }) {
+    const [first, second] = tokens
+    if (at !== 0 || first?.tokenType !== T.Numeral || !second || touches(first, second)) return undefined
+    if (T.isOf(second.tokenType, T.Infix) || T.isOf(second.tokenType, T.Assign)) return undefined
+    return {
+      message: 'Lines carry no numbers in the text.',
+      remedy: 'Delete the number.',
+      fix: replaceFix('Delete the number', { start: first.startOffset, end: second.startOffset }, ''),
+    }
+  },
+
   function elseOnOneLine(broken) {
     const { tokens, at } = broken
     if (tokens[0]?.tokenType !== T.If || tokens[at]?.tokenType !== T.Else) return undefined

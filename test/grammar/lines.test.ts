@@ -90,7 +90,7 @@ end`
 })
 
 describe('numbers', () => {
-  const valueOf = (text: string): unknown => {
+  const readNumber = (text: string): unknown => {
     const statement = parseText(`routine r\nbegin\n x <- ${text}\nend`).routines[0]?.body[0]
     return statement?.kind === 'assign' && statement.value.kind === 'number' ? statement.value.value : undefined
   }
@@ -103,12 +103,12 @@ describe('numbers', () => {
     ['1_000_000', 1000000n],
     ['0x1_0000', 65536n],
     ['007', 7n],
-  ])('%s', (text, value) => expect(valueOf(text)).toBe(value))
+  ])('%s', (text, value) => expect(readNumber(text)).toBe(value))
 
   test('of the widest word are read whole', () => {
     const word = 2n ** 4096n - 1n
-    expect(valueOf(String(word))).toBe(word)
-    expect(valueOf(`0b${word.toString(2)}`)).toBe(word)
+    expect(readNumber(String(word))).toBe(word)
+    expect(readNumber(`0b${word.toString(2)}`)).toBe(word)
   })
 
   test('stand next to a range sign', () => {

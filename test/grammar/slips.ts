@@ -62,6 +62,8 @@ export const INSTRUCTIONS: readonly Slip[] = [
   ['Halt', 'capitals', 'halt'],
   ['goto', 'The line ends where a name was expected'],
   ['goto 10', 'A label is a name', 'goto L10'],
+  ['10: x <- 5', 'A label is a name', 'L10: x <- 5'],
+  ['12 x <- 5', 'Lines carry no numbers', 'x <- 5'],
   ['halt now', 'where the line should end'],
   ['end <- 5', '`end` is a word of the notation'],
   ['x <- end', '`end` is a word of the notation'],
