@@ -117,7 +117,7 @@ export function Plot(props: PlotProps) {
           />
         ))}
         <Points {...props} />
-        <ReadingRing reading={props.reading} />
+        <ReadingMark reading={props.reading} />
         <EndLabels {...props} curves={curves} />
         <Letter letter={props.letter} />
       </LineChart>
@@ -298,11 +298,23 @@ function ReadingLine({ reading }: { readonly reading?: PlotReading | undefined }
   const { area } = scales
   const { left } = scales.at({ x: reading.x, y: reading.y ?? 1 })
   if (!Number.isFinite(left)) return null
-  const bottom = area.y + area.height
+  const foot = area.y + area.height
+  return <path d={`M${round(left)} ${area.y}V${foot}`} stroke="var(--ink2)" strokeDasharray="1.5 2.5" fill="none" />
+}
+
+/** Over the markers, so that its words stay legible. */
+function ReadingMark({ reading }: { readonly reading?: PlotReading | undefined }) {
+  const scales = useScales()
+  if (!scales || !reading) return null
+  const { area } = scales
+  const { left, top } = scales.at({ x: reading.x, y: reading.y ?? 1 })
+  if (!Number.isFinite(left)) return null
   const nearRight = left > area.x + area.width * 0.72
   return (
     <g className="reading">
-      <path d={`M${round(left)} ${area.y}V${bottom}`} stroke="var(--ink2)" strokeDasharray="1.5 2.5" fill="none" />
+      {reading.y !== undefined && Number.isFinite(top) && (
+        <circle cx={left} cy={top} r={7.5} fill="none" stroke="var(--ink)" strokeWidth={1.3} />
+      )}
       <text className="plot-label strong" x={left} y={area.y - 7} textAnchor="middle">
         {reading.name}
       </text>
@@ -310,7 +322,7 @@ function ReadingLine({ reading }: { readonly reading?: PlotReading | undefined }
         <text
           className="tick strong"
           x={left + (nearRight ? -5 : 5)}
-          y={bottom - 6}
+          y={area.y + area.height - 6}
           textAnchor={nearRight ? 'end' : 'start'}
         >
           {reading.figure}
@@ -318,14 +330,6 @@ function ReadingLine({ reading }: { readonly reading?: PlotReading | undefined }
       )}
     </g>
   )
-}
-
-function ReadingRing({ reading }: { readonly reading?: PlotReading | undefined }) {
-  const scales = useScales()
-  if (!scales || reading?.y === undefined) return null
-  const { left, top } = scales.at({ x: reading.x, y: reading.y })
-  if (!Number.isFinite(left) || !Number.isFinite(top)) return null
-  return <circle className="ring" cx={left} cy={top} r={7.5} fill="none" stroke="var(--ink)" strokeWidth={1.3} />
 }
 
 function EndLabels({ series, curves, plainSeries }: PlotProps & { readonly curves: readonly PlotCurve[] }) {
