@@ -445,36 +445,51 @@ const { statements: list } = fc.letrec<{ statements: Lines; statement: Lines; fo
   ),
 }))
 
-/** A loop written out, as drafts have it: by `while` or by labels, up or down, its variable moved at the end or early. */
+/**
+ * A loop written out, as drafts have it: by `while` or by labels, up or down; its variable moves last, first, between two
+ * parts of the body, or in some passes only.
+ */
 function writtenOut(body: fc.Arbitrary<Lines>): fc.Arbitrary<Lines> {
-  return fc.tuple(fc.nat(3), fc.boolean(), fc.nat(5), fc.nat(8), bound(), bound(), body).map(
-    ([test, down, form, touched, from, to, body]): Lines =>
-      scope => {
-        const [variable, ...rest] = scope.loopNames
-        if (variable === undefined) return nested(body, scope).map(line => line.slice(2))
-        const going = (down ? ['>', '!=', '>=', '>'] : ['<', '!=', '<=', '<'])[test]!
-        const ending = (down ? ['<=', '=', '<', '<='] : ['>=', '=', '>', '>='])[test]!
-        const changes = {
-          loopNames: rest,
-          readable: [...scope.readable, variable],
-          assignable: touched === 0 ? [...scope.assignable, variable] : scope.assignable,
-        }
-        const step = `${variable} <- ${variable} ${down ? '-' : '+'} 1`
-        const lines = nested(body, scope, changes)
-        const pass = form % 2 === 0 ? [...lines, `  ${step}`] : [`  ${step}`, ...lines]
-        const start = `${variable} <- ${from(scope)}`
-        if (form < 4) return [start, `while ${variable} ${going} ${to(scope)}`, ...pass, 'end']
-        const [again, done] = [`l${scope.fresh()}`, `l${scope.fresh()}`]
-        return [
-          start,
-          `${again}:`,
-          `if ${variable} ${ending} ${to(scope)} goto ${done}`,
-          ...pass,
-          `goto ${again}`,
-          `${done}:`,
-        ]
-      },
-  )
+  return fc
+    .record({
+      test: fc.nat(3),
+      down: fc.boolean(),
+      labelled: fc.boolean(),
+      move: fc.constantFrom('last', 'last', 'first', 'between', 'sometimes'),
+      touched: fc.nat(9),
+      from: bound(),
+      to: bound(),
+      sometimes: condition,
+      body,
+      second: body,
+    })
+    .map(
+      ({ test, down, labelled, move, touched, from, to, sometimes, body, second }): Lines =>
+        scope => {
+          const [variable, ...rest] = scope.loopNames
+          if (variable === undefined) return nested(body, scope).map(line => line.slice(2))
+          const going = (down ? ['>', '!=', '>=', '>'] : ['<', '!=', '<=', '<'])[test]!
+          const ending = (down ? ['<=', '=', '<', '<='] : ['>=', '=', '>', '>='])[test]!
+          const [again, done] = [`l${scope.fresh()}`, `l${scope.fresh()}`]
+          const inner = {
+            loopNames: rest,
+            loops: [...scope.loops, variable],
+            readable: [...scope.readable, variable],
+            assignable: touched === 0 ? [...scope.assignable, variable] : scope.assignable,
+            labels: labelled ? [again, done, ...scope.labels] : scope.labels,
+          }
+          const step = `  ${variable} <- ${variable} ${down ? '-' : '+'} 1`
+          const moving =
+            move === 'sometimes' ? [`  if ${sometimes({ ...scope, ...inner })}`, `  ${step}`, '  end'] : [step]
+          const before = move === 'first' ? [] : nested(body, scope, inner)
+          const after = move === 'first' || move === 'between' ? nested(second, scope, inner) : []
+          const pass = [...before, ...moving, ...after]
+          const start = `${variable} <- ${from(scope)}`
+          if (!labelled) return [start, `while ${variable} ${going} ${to(scope)}`, ...pass, 'end']
+          const leave = `if ${variable} ${ending} ${to(scope)} goto ${done}`
+          return [start, `${again}:`, leave, ...pass, `goto ${again}`, `${done}:`]
+        },
+    )
 }
 
 /** A bound or step of a loop: small most often, so that loops end. */
