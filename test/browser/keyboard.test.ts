@@ -71,7 +71,9 @@ test('a remedy is carried out from the keyboard', async () => {
   await page.locator('.cm-content').focus()
   await page.keyboard.press('ControlOrMeta+a')
   await page.keyboard.type('routine one\nout x\nbegin\nx <- 1 ^ 1\nend\n')
-  await page.locator('.message').waitFor()
+  // What half a draft lacks may be told while it is typed; the remedy is for the whole.
+  await page.locator('.message', { hasText: 'is power' }).waitFor()
+  await expect.poll(() => page.locator('.message').count(), SOON).toBe(1)
   await page.keyboard.press('ControlOrMeta+Home')
   await page.keyboard.press('F8')
   await page.keyboard.press('Alt+Enter')
