@@ -178,12 +178,20 @@ export class Bounds {
     return most > this.ones ? this.ones : most
   }
 
+  private blockWrites(block: number): number[] {
+    return this.program.blocks[block]!.operations.flatMap(operationWrites)
+  }
+
   private stepWrites(step: Step): readonly number[] {
     switch (step.kind) {
       case 'block':
-        return this.program.blocks[step.block]!.operations.flatMap(operation =>
-          operationWrites(operation).map(variable => variable + step.shift),
+        return this.blockWrites(step.block).map(variable => variable + step.shift)
+      case 'choose': {
+        const { yes, no } = this.graph.choices[step.choice]!
+        return [yes, no].flatMap(block =>
+          block === undefined ? [] : this.blockWrites(block).map(variable => variable + step.shift),
         )
+      }
       case 'copy':
         return step.into
       case 'pull':

@@ -196,6 +196,11 @@ class ModuleRunner {
     const nodeVisits = plan.counts.visits(counter => Number(slots[plan.counterSlot + counter]!))
     const visits = new Float64Array(program.blocks.length)
     for (const [node, block] of plan.nodeBlocks.entries()) if (block >= 0) visits[block]! += nodeVisits[node]!
+    for (const [at, { node, yes, no }] of plan.choices.entries()) {
+      const taken = Number(slots[plan.choiceSlot + at]!)
+      if (yes !== undefined) visits[yes]! += taken
+      if (no !== undefined) visits[no]! += yes === undefined ? taken : nodeVisits[node]! - taken
+    }
     if (totalOperations(program, visits) > limits.operations) {
       const last = program.blocks.find(({ terminator }, at) => terminator.kind === 'halt' && visits[at] === 1)!
       const span = spanOfBlock(binding, last)

@@ -76,7 +76,14 @@ function findLoop(
     for (const step of nodes[at]!.steps) {
       if (step.kind === 'copy') addWrites(writes, step.into, 0)
       else if (step.kind === 'pull') addWrites(writes, step.variables, 0)
-      else if (step.kind === 'block') {
+      else if (step.kind === 'choose') {
+        const { yes, no } = graph.choices[step.choice]!
+        for (const block of [yes, no]) {
+          if (block === undefined) continue
+          for (const operation of program.blocks[block]!.operations)
+            addWrites(writes, operationWrites(operation), step.shift)
+        }
+      } else if (step.kind === 'block') {
         const { operations, checkpoint } = program.blocks[step.block]!
         if (checkpoint !== undefined && at !== head) return undefined
         for (const operation of operations) {

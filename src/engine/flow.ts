@@ -1,5 +1,6 @@
 import type { Operand, Program, Terminator } from '../routine'
 import { type CallPlan, planCalls } from './calls'
+import type { Choice } from './choices'
 import type { CountedLoop } from './counted'
 import { liveAcrossCalls } from './live'
 
@@ -37,6 +38,8 @@ export type Step =
   | { readonly kind: 'pull'; readonly variables: readonly number[] }
   /** Sets a selector to a number. */
   | { readonly kind: 'select'; readonly selector: number; readonly value: number }
+  /** The operations of both arms of a branch are worked out, and the test picks the words. */
+  | { readonly kind: 'choose'; readonly choice: number; readonly test: Of<'branch'>; readonly shift: number }
   /** Works out how far the variable of a counted loop may go; the run ends where not even one pass is left. */
   | { readonly kind: 'begin'; readonly loop: number }
   /** Counts and charges the passes of a counted loop since its `begin`: what its variable tells, and `passes` more. */
@@ -74,6 +77,7 @@ export interface FlowGraph {
   selectors: number
   /** Whether any procedure keeps frames on a stack. */
   readonly stacked: boolean
+  readonly choices: Choice[]
   readonly counted: CountedLoop[]
 }
 
@@ -166,7 +170,14 @@ class FlowBuilder {
     }
     this.copy(0, { unit: 0, depth: 0, onReturn: unused })
     const stacked = [...this.sharedProcedures.values()].some(({ selector }) => selector === 'stack')
-    return { nodes: this.nodes, variables: this.variables, selectors: this.selectors, stacked, counted: [] }
+    return {
+      nodes: this.nodes,
+      variables: this.variables,
+      selectors: this.selectors,
+      stacked,
+      choices: [],
+      counted: [],
+    }
   }
 
   private node(block: number): number {

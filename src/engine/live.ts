@@ -61,6 +61,26 @@ export function liveAcrossCalls(program: Program, procedure: number): Map<number
   return across
 }
 
+/** The same operation on other operands and variables. */
+export function mapOperation(
+  operation: Operation,
+  read: (operand: Operand) => Operand,
+  write: (variable: number) => number,
+): Operation {
+  switch (operation.kind) {
+    case 'binary': {
+      const [left, right] = [read(operation.left), read(operation.right)]
+      return { ...operation, left, right, into: write(operation.into) }
+    }
+    case 'unary':
+      return { ...operation, operand: read(operation.operand), into: write(operation.into) }
+    case 'move':
+      return { ...operation, from: read(operation.from), into: write(operation.into) }
+    default:
+      throw new Error(`no operation of kind ${operation.kind} is worked out in vain`)
+  }
+}
+
 /** The operands that an operation reads. */
 export function operationReads(operation: Operation): readonly Operand[] {
   switch (operation.kind) {

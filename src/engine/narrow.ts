@@ -58,6 +58,14 @@ export class NarrowWords implements WordCode {
     this.set(into)
   }
 
+  choose(into: number, test: number, yes: Operand, no: Operand): void {
+    this.push(yes)
+    this.push(no)
+    this.code.get(test)
+    this.code.op(OP.select)
+    this.set(into)
+  }
+
   unary(name: UnaryFunction, into: number, operand: Operand): void {
     const { code, ops } = this
     switch (name) {

@@ -1,5 +1,6 @@
 import type { Program } from '../routine'
 import { Bounds } from './bounds'
+import { type Choice, MOST_OPERATIONS, makeChoices } from './choices'
 import { CodeBuilder, LocalPool } from './code'
 import { CountPlan } from './count'
 import { countLoops } from './counted'
@@ -37,6 +38,9 @@ export interface ModulePlan {
   readonly copiedFrames: readonly { readonly node: number; readonly words: number }[]
   readonly counterSlot: number
   readonly counts: CountPlan
+  /** Branches without blocks for their arms, and where the number of times that the arm was taken waits for each. */
+  readonly choices: readonly Choice[]
+  readonly choiceSlot: number
   /** By node of the flow graph: the program's block it visits, -1 for none. */
   readonly nodeBlocks: Int32Array
 }
@@ -50,6 +54,7 @@ export const MOST_WIDTH = 64
 /** Plans and writes the module. Sizes, lets, lengths, bases and fix words are parameters of a run, never part of it. */
 export function planModule(program: Program, width: number, marked: boolean): ModulePlan {
   const graph = buildFlow(program)
+  makeChoices(program, graph)
   const order = countLoops(program, graph, readyFlow(graph))
   const loops = findLoops(order)
   const counts = new CountPlan(graph, order, loops)
@@ -57,9 +62,17 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
   const code = new CodeBuilder()
   const pool = new LocalPool()
   const slots = new SlotTable(pool)
-  const head = mostHeadBytes(program, counts.counters)
+  const head = mostHeadBytes(program, counts.counters + graph.choices.length)
   const bounds = new Bounds(program, graph, order, width)
-  const words = new NarrowWords(width, program.constants, graph.variables, code, pool, slots, bounds)
+  const words = new NarrowWords(
+    width,
+    program.constants,
+    graph.variables + 2 * MOST_OPERATIONS,
+    code,
+    pool,
+    slots,
+    bounds,
+  )
   const steps = new StepCode(program, graph, words, code, pool, slots, bounds, head, marked)
   for (const { name, role } of program.routine.scalars) {
     if (role === 'out') continue
@@ -74,6 +87,7 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
     return counterLocals[counter]!
   }
   const counterSlot = slots.take(counts.counters)
+  const choiceSlot = slots.take(graph.choices.length)
   const resultSlots = new Map([...program.results].map(([name]) => [name, slots.take(1)]))
   let peakSlot: number | undefined
   emitStructure(graph, order, loops, code, {
@@ -95,6 +109,9 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
     finish: () => {
       for (let counter = 0; counter < counts.counters; counter++) {
         slots.write(code, counterSlot + counter, I64_OPS, () => code.get(counterLocal(counter)))
+      }
+      for (let choice = 0; choice < graph.choices.length; choice++) {
+        slots.write(code, choiceSlot + choice, I64_OPS, () => code.get(steps.takenOf(choice)))
       }
       for (const [name, variable] of program.results) {
         words.writeSlot(resultSlots.get(name)!, { kind: 'variable', variable })
@@ -125,6 +142,8 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
     copiedFrames: copiedFrames(graph),
     counterSlot,
     counts,
+    choices: graph.choices,
+    choiceSlot,
     nodeBlocks: Int32Array.from(graph.nodes, ({ block }) => block),
   }
 }

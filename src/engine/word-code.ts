@@ -12,6 +12,8 @@ export interface WordCode {
   readonly logBytes: number
   /** All operands are read before a variable is written. */
   copy(from: readonly Operand[], into: readonly number[]): void
+  /** The variable becomes the first word where an i32 local is not 0, else the second. */
+  choose(into: number, test: number, yes: Operand, no: Operand): void
   /** The caller has made sure that a divisor is not 0. */
   binary(name: BinaryFunction, into: number, left: Operand, right: Operand): void
   unary(name: UnaryFunction, into: number, operand: Operand): void
