@@ -2,7 +2,7 @@ import type { Comparison } from '../../grammar/tree'
 import type { BinaryFunction, Constant, Operand, UnaryFunction } from '../routine'
 import type { Bounds } from './bounds'
 import type { CodeBuilder, LocalPool } from './code'
-import { I32_OPS, I64_OPS, OP, type WordOpcodes } from './opcode'
+import { BINARY_OPCODE, I32_OPS, I64_OPS, OP, SIGNED_OPCODE, UNSIGNED_OPCODE, type WordOpcodes } from './opcode'
 import type { RunLayout, SlotTable } from './slots'
 import { SLOT_BYTES } from './slots'
 import type { WordCode } from './word-code'
@@ -474,32 +474,3 @@ export class NarrowWords implements WordCode {
 
 /** Indices below this are folded into an access's constant offset. */
 const MOST_KNOWN_INDEX = 1n << 24n
-
-const BINARY_OPCODE = {
-  add: 'add',
-  subtract: 'sub',
-  multiply: 'mul',
-  divide: 'divU',
-  modulo: 'remU',
-  and: 'and',
-  or: 'or',
-  xor: 'xor',
-} as const satisfies Partial<Record<BinaryFunction, keyof WordOpcodes>>
-
-const UNSIGNED_OPCODE = {
-  '=': 'eq',
-  '!=': 'ne',
-  '<': 'ltU',
-  '<=': 'leU',
-  '>': 'gtU',
-  '>=': 'geU',
-} as const satisfies Record<Comparison, keyof WordOpcodes>
-
-const SIGNED_OPCODE = {
-  '=': 'eq',
-  '!=': 'ne',
-  '<': 'ltS',
-  '<=': 'leS',
-  '>': 'gtS',
-  '>=': 'geS',
-} as const satisfies Record<Comparison, keyof WordOpcodes>

@@ -1,3 +1,6 @@
+import type { Comparison } from '../../grammar/tree'
+import type { BinaryFunction } from '../routine'
+
 /** Types of WebAssembly values (WebAssembly Core Specification, section 5.3.1). */
 export const I32 = 0x7f
 export const I64 = 0x7e
@@ -123,3 +126,33 @@ export const I64_OPS: WordOpcodes = {
   shl: 0x86,
   shrU: 0x88,
 }
+
+/** The instruction of each operation on words that is one. */
+export const BINARY_OPCODE = {
+  add: 'add',
+  subtract: 'sub',
+  multiply: 'mul',
+  divide: 'divU',
+  modulo: 'remU',
+  and: 'and',
+  or: 'or',
+  xor: 'xor',
+} as const satisfies Partial<Record<BinaryFunction, keyof WordOpcodes>>
+
+export const UNSIGNED_OPCODE = {
+  '=': 'eq',
+  '!=': 'ne',
+  '<': 'ltU',
+  '<=': 'leU',
+  '>': 'gtU',
+  '>=': 'geU',
+} as const satisfies Record<Comparison, keyof WordOpcodes>
+
+export const SIGNED_OPCODE = {
+  '=': 'eq',
+  '!=': 'ne',
+  '<': 'ltS',
+  '<=': 'leS',
+  '>': 'gtS',
+  '>=': 'geS',
+} as const satisfies Record<Comparison, keyof WordOpcodes>

@@ -111,7 +111,7 @@ export function planModule(program: Program, width: number, marked: boolean): Mo
         slots.write(code, counterSlot + counter, I64_OPS, () => code.get(counterLocal(counter)))
       }
       for (let choice = 0; choice < graph.choices.length; choice++) {
-        slots.write(code, choiceSlot + choice, I64_OPS, () => code.get(steps.takenOf(choice)))
+        slots.write(code, choiceSlot + choice, I64_OPS, () => code.get(steps.choices.takenOf(choice)))
       }
       for (const [name, variable] of program.results) {
         words.writeSlot(resultSlots.get(name)!, { kind: 'variable', variable })

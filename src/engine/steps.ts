@@ -1,11 +1,10 @@
 import type { Operand, Operation, Program, Terminator } from '../routine'
 import type { Bounds } from './bounds'
-import { MOST_OPERATIONS } from './choices'
+import { ChoiceCode } from './choice-code'
 import type { CodeBuilder, LocalPool } from './code'
 import type { CountedLoop } from './counted'
 import { type FailureSite, FailureSites } from './failure-site'
 import { type FlowGraph, type Step, shiftOperand } from './flow'
-import { mapOperation } from './live'
 import { JUDGE_FUNCTION } from './module'
 import { I32, I32_OPS, I64_OPS, OP } from './opcode'
 import type { SlotTable } from './slots'
@@ -25,8 +24,7 @@ export class StepCode {
   private made: number | undefined
   private readonly selectorLocals: number[] = []
   private readonly passes: number[] = []
-  private readonly taken: number[] = []
-  private testLocal: number | undefined
+  readonly choices: ChoiceCode
   private readonly bases: number[] = []
   private frames: { count: number; peak: number; sum: number } | undefined
   private stack: { pointer: number; end: number } | undefined
@@ -45,6 +43,15 @@ export class StepCode {
     marked: boolean,
   ) {
     this.valueSlot = slots.take(1)
+    this.choices = new ChoiceCode(
+      program,
+      graph,
+      words,
+      code,
+      pool,
+      (test, shift) => this.pushTest(test, shift),
+      (operation, block) => this.operation(operation, 0, block),
+    )
     this.assertSlot = slots.take(mostReads(program))
     this.marked = marked && program.routine.arrays.some(array => array.role === 'work')
     if (graph.stacked) {
@@ -68,7 +75,7 @@ export class StepCode {
       }
       case 'choose':
         this.bounds.moveTo(node, place, 0)
-        this.choose(step)
+        this.choices.emit(step)
         break
       case 'copy':
         this.words.copy(step.from, step.into)
@@ -291,62 +298,6 @@ export class StepCode {
     }
   }
 
-  /** The arms work on variables of their own, until the test picks. */
-  private choose({ choice, test, shift }: Of<'choose'>): void {
-    const { code } = this
-    const { yes, no } = this.graph.choices[choice]!
-    this.testLocal ??= this.pool.take(I32)
-    this.pushTest(test, shift)
-    code.set(this.testLocal)
-    const arms = [this.arm(yes, shift, 0), this.arm(no, shift, MOST_SPARE)]
-    const written = new Set([...arms[0]!.keys(), ...arms[1]!.keys()])
-    for (const variable of written) {
-      const [first, second] = arms.map(
-        (spares): Operand => ({
-          kind: 'variable',
-          variable: spares.get(variable) ?? variable,
-        }),
-      )
-      this.words.choose(variable, this.testLocal, first!, second!)
-    }
-    const taken = this.takenOf(choice)
-    code.get(taken)
-    code.get(this.testLocal)
-    if (yes === undefined) code.op(I32_OPS.eqz)
-    code.op(OP.i64ExtendI32U)
-    code.op(I64_OPS.add)
-    code.set(taken)
-  }
-
-  /** Works out an arm on spare variables, from a number on; gives the spare of each variable that it sets. */
-  private arm(block: number | undefined, shift: number, first: number): Map<number, number> {
-    const spares = new Map<number, number>()
-    if (block === undefined) return spares
-    for (const operation of this.program.blocks[block]!.operations) {
-      const moved = mapOperation(
-        operation,
-        operand => {
-          const shifted = shiftOperand(operand, shift)
-          const spare = shifted.kind === 'variable' ? spares.get(shifted.variable) : undefined
-          return spare === undefined ? shifted : { kind: 'variable', variable: spare }
-        },
-        variable => {
-          const spare = spares.get(variable + shift) ?? this.graph.variables + first + spares.size
-          spares.set(variable + shift, spare)
-          return spare
-        },
-      )
-      this.operation(moved, 0, block)
-    }
-    return spares
-  }
-
-  /** The local that counts how often a choice took its arm, or the first of its two. */
-  takenOf(choice: number): number {
-    this.taken[choice] ??= this.pool.take(I64_OPS.type)
-    return this.taken[choice]!
-  }
-
   private assert(operation: Extract<Operation, { kind: 'assert' }>, shift: number, block: number): void {
     const { code } = this
     let slot = this.assertSlot
@@ -521,9 +472,6 @@ export class StepCode {
 }
 
 export const PAGE_BYTES = 65_536
-
-/** Spare variables of one arm of a choice: as many as it may have operations. */
-const MOST_SPARE = MOST_OPERATIONS
 
 /** The stack of frames grows by 4 MiB at a time, so that growing takes no part of a run's time. */
 const STACK_GROWTH_PAGES = 64

@@ -1,4 +1,4 @@
-import { nearestName } from '../sweep'
+import { nearestName } from '../routine'
 import { CLAIMS_FLAGS, claims } from './claims'
 import { COUNT_FLAGS, count } from './count'
 import { type Arguments, type Flag, sortArguments } from './flags'

@@ -1,5 +1,5 @@
 import { parseArgs } from 'node:util'
-import { nearestName } from '../sweep/nearest'
+import { nearestName } from '../routine'
 import { misuse } from './terminal'
 
 export interface Flag {

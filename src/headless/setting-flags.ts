@@ -1,11 +1,10 @@
 import { type Charges, INSTRUCTION_SETS, type InstructionSetName, type OffPolicy } from '../machine'
-import type { Program } from '../routine'
+import { nearestName, type Program } from '../routine'
 import {
   FEED_PATTERNS,
   type FeedPattern,
   findMismatch,
   type Misread,
-  nearestName,
   parseCharges,
   parseLets,
   parseSizes,

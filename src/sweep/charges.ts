@@ -1,7 +1,7 @@
 import { CHARGES, type Charges, type ChargesName } from '../machine/machine'
+import { nearestName } from '../routine'
 import type { ChargedClass } from '../routine/block'
 import { type Misread, splitList } from './misread'
-import { nearestName } from './nearest'
 
 const PRESETS = Object.keys(CHARGES) as ChargesName[]
 const CLASSES = Object.keys(CHARGES.unit) as ChargedClass[]

@@ -4,7 +4,6 @@ export { gridPoints, NO_WIDTH } from './grid'
 export { parseLets } from './lets'
 export { findMismatch } from './mismatch'
 export type { Misread } from './misread'
-export { nearestName } from './nearest'
 export {
   bindPoint,
   ENGINE_WIDTH,

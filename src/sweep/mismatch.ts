@@ -1,6 +1,5 @@
-import { namesInExact, type Program } from '../routine'
+import { namesInExact, nearestName, type Program } from '../routine'
 import type { Misread } from './misread'
-import { nearestName } from './nearest'
 import type { Setting } from './setting'
 
 /** The first thing in a setting that does not go with the routine: a size or let that it lacks, or one not given. */
