@@ -7,7 +7,7 @@ import { toInput } from '../outside/two-ways'
 import { type RandomRoutine, randomRoutine } from './random-routine'
 
 /** How many routines: few by default, any number by environment for a long run; likewise where the draw starts. */
-const COUNT = Number(process.env.RANDOM_ROUTINES ?? 700)
+const COUNT = Number(process.env.RANDOM_ROUTINES ?? 600)
 const SEED = process.env.RANDOM_SEED === undefined ? {} : { seed: Number(process.env.RANDOM_SEED) }
 
 type Ending = 'good' | 'refused' | string

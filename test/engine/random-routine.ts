@@ -1,6 +1,8 @@
 import fc from 'fast-check'
 import type { Given } from '../outside/two-ways'
-import { type Arrays, drawWord, randomArrays, type Scope, statements } from './random-text'
+import type { ArrayShape, Lines, Scope } from './random-scope'
+import { bodyLines } from './random-statement'
+import { drawWord } from './random-word'
 
 /** A whole random routine and what several runs of it are given, all at one width. Valid by construction; runs may fail. */
 export interface RandomRoutine {
@@ -18,14 +20,14 @@ const width: fc.Arbitrary<number> = fc.oneof(
 
 /** Small limits, so that every run ends soon; those that hit one must do so at the same place both ways. */
 const limits = fc.record({
-  operations: fc.constantFrom(3000, 3000, 1000, 200, 20),
+  operations: fc.constantFrom(20_000, 20_000, 20_000, 2000, 200, 20),
   frames: fc.constantFrom(400, 60, 12),
 })
 
 interface ProcedureShape {
   readonly parameters: number
   readonly results: number
-  readonly bodySeed: (scope: Scope) => string[]
+  readonly body: Lines
   /** Where it recurs with its depth as it stands, it may never come back. */
   readonly bounded: boolean
 }
@@ -33,21 +35,38 @@ interface ProcedureShape {
 const procedure: fc.Arbitrary<ProcedureShape> = fc.record({
   parameters: fc.nat(2),
   results: fc.nat(2),
-  bodySeed: statements,
+  body: bodyLines,
   bounded: fc.nat(9).map(draw => draw < 8),
 })
 
+/** An array that a routine may have; its length is worked out once n is known. */
+const array = (name: string, role: ArrayShape['role'], sized: boolean) =>
+  fc.option(
+    fc.nat(4).map(extra => ({ name, role, sized, extra })),
+    { freq: 3, nil: undefined },
+  )
+
+const arrays = fc.tuple(
+  array('ia', 'in', true),
+  array('ta', 'fix', false),
+  array('ua', 'inout', true),
+  array('oa', 'out', false),
+  array('wa', 'work', false),
+  array('wb', 'work', true),
+)
+
 const shape = fc.record({
+  bold: fc.nat(2).map(draw => draw === 0),
   width,
   n: fc.nat(6),
-  arrays: randomArrays,
+  arrays,
   inputs: fc.nat(2),
   kept: fc.boolean(),
   outputs: fc.integer({ min: 1, max: 2 }),
   words: fc.array(drawWord, { minLength: 40, maxLength: 40 }),
   tunable: fc.nat(5),
   procedures: fc.array(procedure, { maxLength: 2 }),
-  body: statements,
+  body: bodyLines,
   runs: fc.array(fc.record({ limits, junk: fc.nat(1000), more: fc.nat(2), tunable: fc.nat(5) }), {
     minLength: 1,
     maxLength: 2,
@@ -64,7 +83,11 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
   const word = (at: number) => drawn.words[at % drawn.words.length]!(modulus)
   const small = (value: number) => Number(BigInt(value) % modulus)
   const n = small(drawn.n)
-  const arrays = fitArrays(drawn.arrays, n, Number(modulus < 64n ? modulus : 64n))
+  const arrays = fitArrays(
+    drawn.arrays.filter(item => item !== undefined),
+    n,
+    Number(modulus < 64n ? modulus : 64n),
+  )
   const inputs = ['s', 't'].slice(0, drawn.inputs)
   const kept = drawn.kept ? ['u'] : []
   const outputs = ['p', 'q'].slice(0, drawn.outputs)
@@ -73,6 +96,7 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
 
   const scope = (place: Partial<Scope>): Scope => ({
     modulus,
+    bold: drawn.bold,
     arrays,
     readable: [],
     assignable: [],
@@ -87,18 +111,18 @@ function buildRoutine(drawn: Drawn): RandomRoutine {
   const loopNames = ['i', 'j', 'k']
   const constants = ['c', 'm', 'w', ...(arrays.some(array => array.sized) ? ['n'] : [])]
 
-  const procedureText = ({ name, parameters, results, bodySeed, bounded }: (typeof procedures)[number]) => {
+  const procedureText = ({ name, parameters, results, body: draw, bounded }: (typeof procedures)[number]) => {
     const taken = ['a0', 'a1'].slice(0, parameters)
     const given = ['r0', 'r1'].slice(0, results)
     const own = [...given, 'x', 'y']
     const start = [...own, 'fuel', ...loopNames].map(
       (variable, at) => `  ${variable} <- ${variable === 'fuel' ? '~0' : at % 2}`,
     )
-    const body = bodySeed(
+    const body = draw(
       scope({
         readable: [...own, ...taken, 'depth', ...constants],
         assignable: [...own, ...taken],
-        depth: bounded ? 'depth - 1' : 'depth',
+        depth: bounded || !drawn.bold ? 'depth - 1' : 'depth',
         loopNames,
       }),
     )
@@ -170,7 +194,11 @@ function counter(): () => number {
 }
 
 /** Leaves arrays out so that memory has no more words than addresses, or than a test needs. */
-function fitArrays(drawn: Arrays, n: number, capacity: number): Arrays {
+function fitArrays(
+  drawn: readonly Omit<ArrayShape, 'length' | 'declared'>[],
+  n: number,
+  capacity: number,
+): ArrayShape[] {
   let left = capacity
   let known = false
   return drawn.flatMap(array => {
