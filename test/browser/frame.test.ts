@@ -121,7 +121,7 @@ describe('a draft of the author', () => {
     const { page, close } = await openDemo()
     await page.getByLabel('Draft in tally notation').click()
     await page.keyboard.press('ControlOrMeta+End')
-    await page.keyboard.type('# more')
+    await page.keyboard.insertText('# more')
     await page.locator('.draft.is-stale').waitFor()
     await page.getByRole('button', { name: 'Run the sweep' }).waitFor()
     await page.keyboard.press('ControlOrMeta+z')
